@@ -31,11 +31,13 @@ std::string mask_of(const std::vector<bool>& enabled) {
 
 std::string kind_parameters(const ConditionSettings& condition) {
   switch (condition.kind) {
-    case TriggerKind::Threshold: return fmt::format(".LEVEL({})", packed(condition.level_counts, 32));
+    case TriggerKind::Threshold:
+      return fmt::format(".LEVEL({})", packed(condition.level_counts, 32));
     case TriggerKind::TimeOverThreshold:
       return fmt::format(".LEVEL({}), .WINDOW({}), .MIN_OVER({})", packed(condition.level_counts, 32),
                          condition.window_samples, condition.min_samples_over);
-    case TriggerKind::BoxcarSum: break;
+    case TriggerKind::BoxcarSum:
+      break;
   }
   return fmt::format(".LENGTH({}), .SUM({})", condition.length_samples, packed(condition.sum_counts, 64));
 }
@@ -96,8 +98,8 @@ IcarusTotals read_totals(const std::filesystem::path& path) {
 
 }  // namespace
 
-IcarusTotals run_in_icarus(const TriggerSettings& settings, const CodesView& codes,
-                           const std::vector<Firing>& expected, const std::filesystem::path& folder) {
+IcarusTotals run_in_icarus(const TriggerSettings& settings, const CodesView& codes, const std::vector<Firing>& expected,
+                           const std::filesystem::path& folder) {
   write_settings(settings, codes.samples(), folder / "settings.vh");
   write_stimuli(codes, folder / "stimuli.hex");
   write_expected(expected, codes.samples(), folder / "expected.hex");

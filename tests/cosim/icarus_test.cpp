@@ -23,7 +23,7 @@ struct KernelRun {
 };
 
 KernelRun run_kernel(TriggerKind kind, int number, std::size_t samples) {
-  RandomStream stream(kSeed, Purpose::PropertyTest, static_cast<std::uint64_t>(kind) * 1'000'000 + static_cast<unsigned>(number));
+  RandomStream stream = case_stream(kSeed, kind, number);
   KernelRun run;
   run.settings = random_trigger(kind, 4, stream);
   run.codes = boundary_trace(run.settings.condition, samples, stream);

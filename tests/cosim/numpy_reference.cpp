@@ -35,8 +35,8 @@ nlohmann::json settings_json(const NumpyCase& one) {
 void write_npy(const std::filesystem::path& path, const std::vector<Codes>& traces) {
   std::ofstream file(path, std::ios::binary);
   std::ostringstream header;
-  header << "{'descr': '<i2', 'fortran_order': False, 'shape': (" << traces.size() << ", "
-         << traces.front().channels() << ", " << traces.front().samples() << "), }";
+  header << "{'descr': '<i2', 'fortran_order': False, 'shape': (" << traces.size() << ", " << traces.front().channels()
+         << ", " << traces.front().samples() << "), }";
   std::string text = header.str();
   text.append(63 - (10 + text.size()) % 64, ' ');
   text.push_back('\n');
@@ -88,8 +88,8 @@ std::vector<NumpyAnswer> ask_numpy(const std::vector<NumpyCase>& cases, const st
          << file_of(k, "-firings.csv").string() << ' ' << file_of(k, "-margins.csv").string() << '\n';
   }
   list.close();
-  const std::string command = std::string(CISTERN_NUMPY_PYTHON) + " " + CISTERN_NUMPY_REFERENCE + " --batch " +
-                              (folder / "list.txt").string();
+  const std::string command =
+      std::string(CISTERN_NUMPY_PYTHON) + " " + CISTERN_NUMPY_REFERENCE + " --batch " + (folder / "list.txt").string();
   if (std::system(command.c_str()) != 0) throw std::runtime_error("failed: " + command);
   std::vector<NumpyAnswer> answers;
   for (std::size_t k = 0; k < cases.size(); ++k) {

@@ -19,7 +19,7 @@ constexpr int kTraces = 3;
 constexpr std::size_t kSamples = 2'000;
 
 NumpyCase random_case(TriggerKind kind, int number) {
-  RandomStream stream(kSeed, Purpose::PropertyTest, static_cast<std::uint64_t>(kind) * 1'000'000 + static_cast<unsigned>(number));
+  RandomStream stream = case_stream(kSeed, kind, number);
   NumpyCase one;
   one.settings = random_trigger(kind, number % 8 == 7 ? 16 : 4, stream);
   one.settings.firing.enabled = !one_in(stream, 12);
@@ -81,13 +81,13 @@ void compare_with_numpy(TriggerKind kind) {
   std::size_t margins = 0;
   for (std::size_t k = 0; k < cases.size(); ++k) {
     const std::vector<NumpyFiring> ours = kernel_firings(cases[k]);
-    EXPECT_TRUE(ours == answers[k].firings) << "seed " << kSeed << ", setting " << k << ": "
-                                            << first_difference(ours, answers[k].firings);
+    EXPECT_TRUE(ours == answers[k].firings)
+        << "seed " << kSeed << ", setting " << k << ": " << first_difference(ours, answers[k].firings);
     firings += answers[k].firings.size();
     if (cases[k].contiguous) continue;  // the meter looks at one trace at a time here
     const std::vector<NumpyMargin> ours_margins = meter_margins(cases[k]);
-    EXPECT_TRUE(ours_margins == answers[k].margins) << "seed " << kSeed << ", setting " << k << ": "
-                                                    << first_difference(ours_margins, answers[k].margins);
+    EXPECT_TRUE(ours_margins == answers[k].margins)
+        << "seed " << kSeed << ", setting " << k << ": " << first_difference(ours_margins, answers[k].margins);
     margins += answers[k].margins.size();
   }
   fmt::print("{}: {} settings, {} firings, {} margins\n", name_of(kind), kSettings, firings, margins);

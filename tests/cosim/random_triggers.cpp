@@ -2,7 +2,6 @@
 
 #include <algorithm>
 #include <array>
-#include <cstdlib>
 #include <limits>
 
 namespace cistern {
@@ -19,9 +18,12 @@ std::int32_t random_reach(RandomStream& stream) {
 }
 
 std::int32_t random_level(RandomStream& stream) {
-  constexpr std::array<std::int32_t, 6> beyond_every_code = {
-      40'000, -40'000, 65'536, -65'536, std::numeric_limits<std::int32_t>::max(),
-      std::numeric_limits<std::int32_t>::min()};
+  constexpr std::array<std::int32_t, 6> beyond_every_code = {40'000,
+                                                             -40'000,
+                                                             65'536,
+                                                             -65'536,
+                                                             std::numeric_limits<std::int32_t>::max(),
+                                                             std::numeric_limits<std::int32_t>::min()};
   if (one_in(stream, 100)) return beyond_every_code[static_cast<std::size_t>(between(stream, 0, 5))];
   if (one_in(stream, 20)) return static_cast<std::int32_t>(between(stream, -40, 0));
   return static_cast<std::int32_t>(between(stream, 1, 300));
@@ -33,6 +35,23 @@ std::vector<bool> random_mask(std::size_t channels, RandomStream& stream) {
   for (std::size_t c = 0; c < channels; ++c) mask[c] = !one_in(stream, 3);
   mask[static_cast<std::size_t>(between(stream, 0, static_cast<std::int64_t>(channels) - 1))] = true;
   return mask;
+}
+
+void set_reach(ConditionSettings& condition, RandomStream& stream) {
+  const std::int32_t reach = random_reach(stream);
+  if (condition.kind == TriggerKind::TimeOverThreshold) {
+    const std::int32_t most_over = one_in(stream, 2) ? reach : (reach + 7) / 8;
+    condition.window_samples = reach;
+    condition.min_samples_over = static_cast<std::int32_t>(between(stream, 1, most_over));
+  }
+  if (condition.kind == TriggerKind::BoxcarSum) condition.length_samples = reach;
+}
+
+void add_channel(ConditionSettings& condition, RandomStream& stream) {
+  condition.baseline_counts.push_back(static_cast<std::int32_t>(between(stream, 100, 400)));
+  condition.level_counts.push_back(random_level(stream));
+  const std::int64_t height = one_in(stream, 20) ? between(stream, -20, 0) : between(stream, 1, 80);
+  condition.sum_counts.push_back(height * condition.length_samples + between(stream, 0, condition.length_samples));
 }
 
 FiringSettings random_firing(RandomStream& stream) {
@@ -51,6 +70,12 @@ std::int64_t between(RandomStream& stream, std::int64_t low, std::int64_t high) 
 
 bool one_in(RandomStream& stream, std::int64_t odds) { return between(stream, 1, odds) == 1; }
 
+RandomStream case_stream(std::uint64_t seed, TriggerKind kind, int number) {
+  constexpr std::uint64_t cases_of_a_kind = 1'000'000;
+  const std::uint64_t index = static_cast<std::uint64_t>(kind) * cases_of_a_kind + static_cast<std::uint64_t>(number);
+  return {seed, Purpose::PropertyTest, index};
+}
+
 TriggerSettings random_trigger(TriggerKind kind, std::int64_t most_channels, RandomStream& stream) {
   TriggerSettings settings;
   settings.name = "random";
@@ -60,18 +85,8 @@ TriggerSettings random_trigger(TriggerKind kind, std::int64_t most_channels, Ran
   condition.channel_enabled = random_mask(channels, stream);
   const std::int64_t enabled = std::count(condition.channel_enabled.begin(), condition.channel_enabled.end(), true);
   condition.majority = static_cast<std::int32_t>(between(stream, 1, enabled));
-  const std::int32_t reach = random_reach(stream);
-  if (kind == TriggerKind::TimeOverThreshold) {
-    condition.window_samples = reach;
-    condition.min_samples_over = static_cast<std::int32_t>(between(stream, 1, one_in(stream, 2) ? reach : (reach + 7) / 8));
-  }
-  if (kind == TriggerKind::BoxcarSum) condition.length_samples = reach;
-  for (std::size_t c = 0; c < channels; ++c) {
-    condition.baseline_counts.push_back(static_cast<std::int32_t>(between(stream, 100, 400)));
-    condition.level_counts.push_back(random_level(stream));
-    const std::int64_t height = one_in(stream, 20) ? between(stream, -20, 0) : between(stream, 1, 80);
-    condition.sum_counts.push_back(height * condition.length_samples + between(stream, 0, condition.length_samples));
-  }
+  set_reach(condition, stream);
+  for (std::size_t c = 0; c < channels; ++c) add_channel(condition, stream);
   settings.firing = random_firing(stream);
   return settings;
 }

@@ -61,9 +61,12 @@ class TracePainter {
     if (choice < 24) return paint_pulse(at);
     if (choice < 26) return paint_rails(at);
     switch (condition_.kind) {
-      case TriggerKind::Threshold: return paint_threshold_burst(at);
-      case TriggerKind::TimeOverThreshold: return paint_window_burst(at);
-      case TriggerKind::BoxcarSum: return paint_sum_burst(at);
+      case TriggerKind::Threshold:
+        return paint_threshold_burst(at);
+      case TriggerKind::TimeOverThreshold:
+        return paint_window_burst(at);
+      case TriggerKind::BoxcarSum:
+        return paint_sum_burst(at);
     }
     return 1;
   }
@@ -86,7 +89,8 @@ class TracePainter {
     const double decay_samples = stream_.uniform(1.0, 12.0);
     const auto length = static_cast<std::int64_t>(6.0 * decay_samples);
     for (const std::size_t c : enabled_) {
-      const double peak = stream_.exponential(3.0 * static_cast<double>(std::clamp<std::int64_t>(critical_height(c), 4, 1'000)));
+      const auto typical = static_cast<double>(std::clamp<std::int64_t>(critical_height(c), 4, 1'000));
+      const double peak = stream_.exponential(3.0 * typical);
       for (std::int64_t k = 0; k < length; ++k) {
         set_height(c, at + k, std::lround(peak * std::exp(-static_cast<double>(k) / decay_samples)));
       }

@@ -145,7 +145,8 @@ std::unique_ptr<VerilatedProbe> make_probe(TriggerKind kind, int channels) {
     case TriggerKind::TimeOverThreshold:
       if (wide) return std::make_unique<ProbeOf<time_over_threshold_probe_16, 16>>();
       return std::make_unique<ProbeOf<time_over_threshold_probe_4, 4>>();
-    case TriggerKind::BoxcarSum: break;
+    case TriggerKind::BoxcarSum:
+      break;
   }
   if (wide) return std::make_unique<ProbeOf<boxcar_sum_probe_16, 16>>();
   return std::make_unique<ProbeOf<boxcar_sum_probe_4, 4>>();

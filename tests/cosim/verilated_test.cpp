@@ -60,7 +60,7 @@ Totals compare_with_verilog(TriggerKind kind) {
   const auto narrow = make_probe(kind, 4);
   const auto wide = make_probe(kind, 16);
   for (int k = 0; k < kSettings; ++k) {
-    RandomStream stream(kSeed, Purpose::PropertyTest, static_cast<std::uint64_t>(kind) * 1'000'000 + static_cast<unsigned>(k));
+    RandomStream stream = case_stream(kSeed, kind, k);
     VerilatedProbe& probe = k % 8 == 7 ? *wide : *narrow;
     const TriggerSettings settings = random_trigger(kind, k % 8 == 7 ? 16 : 4, stream);
     const Codes codes = boundary_trace(settings.condition, kSamples, stream);
@@ -71,10 +71,11 @@ Totals compare_with_verilog(TriggerKind kind) {
                                      << first_difference(ours, run.firings);
     totals.add(run);
   }
-  fmt::print("{}: {} settings, {} clocks, {} firings passed, {} stopped; near misses by one count {}, one sample {}, "
-             "one channel {}\n",
-             name_of(kind), kSettings, kSettings * kSamples, totals.passed, totals.stopped,
-             totals.near_misses.one_count, totals.near_misses.one_sample, totals.near_misses.one_channel);
+  fmt::print(
+      "{}: {} settings, {} clocks, {} firings passed, {} stopped; near misses by one count {}, one sample {}, "
+      "one channel {}\n",
+      name_of(kind), kSettings, kSettings * kSamples, totals.passed, totals.stopped, totals.near_misses.one_count,
+      totals.near_misses.one_sample, totals.near_misses.one_channel);
   return totals;
 }
 

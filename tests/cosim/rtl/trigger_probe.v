@@ -42,7 +42,8 @@ module trigger_probe #(
           assign now[k] = 1'b0;
         end else begin : some
           threshold_condition #(.CHANNELS(CHANNELS)) one (
-              .clk(clk), .rst(rst), .samples(samples), .baseline(baseline), .level(k == 1 ? easier_level : level), .mask(mask),
+              .clk(clk), .rst(rst), .samples(samples), .baseline(baseline),
+              .level(k == 1 ? easier_level : level), .mask(mask),
               .majority(k == 3 ? easier_majority : majority), .condition(now[k]));
         end
       end else if (KIND == 1) begin : rule
