@@ -1,0 +1,57 @@
+#include "bench/statistics/quantiles.hpp"
+
+#include <algorithm>
+#include <boost/math/special_functions/beta.hpp>
+#include <cmath>
+#include <limits>
+
+#include "traces/base/errors.hpp"
+
+namespace cistern {
+namespace {
+
+constexpr double infinity = std::numeric_limits<double>::infinity();
+
+void check(std::span<const double> sorted, double fraction) {
+  CISTERN_ASSERT(!sorted.empty() && fraction > 0 && fraction < 1);
+  CISTERN_ASSERT(std::is_sorted(sorted.begin(), sorted.end()));
+}
+
+/// P(Binomial(trials, probability) < count), 0 <= count <= trials.
+double probability_below(std::size_t count, std::size_t trials, double probability) {
+  if (count == 0) return 0;
+  return boost::math::ibetac(static_cast<double>(count), static_cast<double>(trials - count) + 1, probability);
+}
+
+}  // namespace
+
+double quantile_of(std::span<const double> sorted, double fraction) {
+  check(sorted, fraction);
+  const double position = fraction * static_cast<double>(sorted.size() - 1);
+  const auto below = static_cast<std::size_t>(position);
+  if (below + 1 == sorted.size()) return sorted[below];
+  return std::lerp(sorted[below], sorted[below + 1], position - static_cast<double>(below));
+}
+
+double quantile_low(std::span<const double> sorted, double fraction, double confidence) {
+  check(sorted, fraction);
+  // The r-th smallest lies above the true quantile when fewer than r values lie below it.
+  std::size_t rank = 0;
+  while (rank < sorted.size() && probability_below(rank + 1, sorted.size(), fraction) <= 1 - confidence) ++rank;
+  return rank == 0 ? -infinity : sorted[rank - 1];
+}
+
+double quantile_high(std::span<const double> sorted, double fraction, double confidence) {
+  check(sorted, fraction);
+  // The r-th smallest lies below the true quantile when at least r values lie below it.
+  std::size_t rank = sorted.size();
+  while (rank > 0 && probability_below(rank, sorted.size(), fraction) >= confidence) --rank;
+  return rank == sorted.size() ? infinity : sorted[rank];
+}
+
+Limits quantile_limits(std::span<const double> sorted, double fraction, double confidence) {
+  const double one_sided = 0.5 + confidence / 2;
+  return {quantile_low(sorted, fraction, one_sided), quantile_high(sorted, fraction, one_sided)};
+}
+
+}  // namespace cistern
