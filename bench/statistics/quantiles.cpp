@@ -4,6 +4,7 @@
 #include <boost/math/special_functions/beta.hpp>
 #include <cmath>
 #include <limits>
+#include <ranges>
 
 #include "traces/base/errors.hpp"
 
@@ -23,6 +24,14 @@ double probability_below(std::size_t count, std::size_t trials, double probabili
   return boost::math::ibetac(static_cast<double>(count), static_cast<double>(trials - count) + 1, probability);
 }
 
+/// The first of the ranks 1 to `ranks` at which `holds` is true, `ranks` + 1 if none; `holds` turns true once.
+template <typename Holds>
+std::size_t first_rank(std::size_t ranks, Holds holds) {
+  const auto all = std::views::iota(std::size_t{1}, ranks + 1);
+  const auto first = std::ranges::partition_point(all, [&](std::size_t rank) { return !holds(rank); });
+  return static_cast<std::size_t>(first - all.begin()) + 1;
+}
+
 }  // namespace
 
 double quantile_of(std::span<const double> sorted, double fraction) {
@@ -36,17 +45,19 @@ double quantile_of(std::span<const double> sorted, double fraction) {
 double quantile_low(std::span<const double> sorted, double fraction, double confidence) {
   check(sorted, fraction);
   // The r-th smallest lies above the true quantile when fewer than r values lie below it.
-  std::size_t rank = 0;
-  while (rank < sorted.size() && probability_below(rank + 1, sorted.size(), fraction) <= 1 - confidence) ++rank;
-  return rank == 0 ? -infinity : sorted[rank - 1];
+  const std::size_t past = first_rank(sorted.size(), [&](std::size_t rank) {
+    return probability_below(rank, sorted.size(), fraction) > 1 - confidence;
+  });
+  return past == 1 ? -infinity : sorted[past - 2];
 }
 
 double quantile_high(std::span<const double> sorted, double fraction, double confidence) {
   check(sorted, fraction);
   // The r-th smallest lies below the true quantile when at least r values lie below it.
-  std::size_t rank = sorted.size();
-  while (rank > 0 && probability_below(rank, sorted.size(), fraction) >= confidence) --rank;
-  return rank == sorted.size() ? infinity : sorted[rank];
+  const std::size_t rank = first_rank(sorted.size(), [&](std::size_t r) {
+    return probability_below(r, sorted.size(), fraction) >= confidence;
+  });
+  return rank > sorted.size() ? infinity : sorted[rank - 1];
 }
 
 Limits quantile_limits(std::span<const double> sorted, double fraction, double confidence) {
