@@ -15,7 +15,7 @@ struct DigitizerConfig {
   double sample_rate_mhz{100};
   std::int32_t bits{12};                      ///< 4 to 15; codes are 0 .. 2^bits - 1
   std::vector<std::int32_t> baseline_counts;  ///< pedestal per channel, the code of no signal
-  std::vector<double> gain;                   ///< factor per channel on the waveform, > 0
+  std::vector<double> gain;                   ///< factor per channel on the waveform, > 0; empty: 1 for all
   std::int32_t latency_samples{0};            ///< pipeline: clocks from sampling instant to code, >= 0
 };
 
@@ -23,6 +23,10 @@ struct DigitizerConfig {
 
 /// code = clip(half-up(waveform * gain + baseline), 0, 2^bits - 1), sample by sample.
 /// \param codes  resized to the waveform's shape
+/// Computed in float; halves go up exactly; a waveform that is not a number gives 0.
 void digitize(const DigitizerConfig& config, const Waveform& waveform, Codes& codes);
+
+/// Samples, over all channels, at the smallest or the largest code.
+[[nodiscard]] std::int64_t count_saturated(CodesView codes, std::int32_t bits);
 
 }  // namespace cistern
