@@ -36,11 +36,11 @@ struct Dispersion {
 struct RateEstimate {
   double rate_hz{0};
   Limits two_sided;                               ///< no firing: low is 0; no live time: high is +inf
-  double dispersion{1};                           ///< the factor the limits allow for: >= 1
+  double dispersion{1};                           ///< variance over mean that the limits allow for, >= 1
   std::optional<double> dispersion_p_low;         ///< of the given blocks; absent where they cannot tell
   std::optional<double> dispersion_p_high;
   bool poisson_applies{false};                    ///< enough firings to tell, and they look like a Poisson law
-  std::string_view method;                        ///< how the limits were found, in words for a report
+  std::string_view method{"no live time"};        ///< how the limits were found, in words for a report
 };
 
 [[nodiscard]] RateEstimate estimate_rate(const BlockCounts& blocks, double confidence = 0.95);
@@ -48,5 +48,9 @@ struct RateEstimate {
 /// One-sided limits of the same kind: the rate is at most (at least) this, in Hz.
 [[nodiscard]] double rate_at_most(const BlockCounts& blocks, double confidence);
 [[nodiscard]] double rate_at_least(const BlockCounts& blocks, double confidence);
+
+/// What firings are divided by to count as independent ones in those limits: 1 where a Poisson law
+/// applies, else their dispersion, enlarged where few blocks leave it uncertain.
+[[nodiscard]] double firings_per_independent_one(const BlockCounts& blocks, double one_sided_confidence);
 
 }  // namespace cistern

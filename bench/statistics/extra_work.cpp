@@ -2,8 +2,6 @@
 
 #include <cmath>
 
-#include "traces/base/errors.hpp"
-
 namespace cistern {
 namespace {
 
@@ -31,9 +29,9 @@ std::optional<double> work_factor(Decided decided) {
 std::optional<double> extra_live_time_s(const BlockCounts& blocks, double bound_hz, double confidence) {
   const double live_s = blocks.live_time_s();
   if (live_s == 0) return {};
-  const double dispersion = estimate_rate(blocks).dispersion;
-  const double effective = static_cast<double>(blocks.total()) / dispersion;
-  const double bound = bound_hz * live_s / dispersion;
+  const double per_independent = firings_per_independent_one(blocks, confidence);
+  const double effective = static_cast<double>(blocks.total()) / per_independent;
+  const double bound = bound_hz * live_s / per_independent;
   const auto factor = work_factor([&](double more) {
     return effective < bound ? garwood_high(effective * more, confidence) <= bound * more
                              : garwood_low(effective * more, confidence) > bound * more;
