@@ -28,7 +28,7 @@ struct ScenarioIdentity {
 struct SiteConfig {
   std::string name;
   double latitude_deg{0};
-  double altitude_m{0};
+  double altitude_m{880};
 };
 
 /// [calibration]: counts of one vertical equivalent muon; one entry or one per channel.
@@ -84,6 +84,7 @@ struct RateConfig {
   double quick_live_time_s{6};
   double block_s{0.1};
   std::vector<double> level_factors{0.5, 0.6, 0.7, 0.8, 0.9, 1.0, 1.1, 1.25, 1.4, 1.6, 2.0};  ///< on level or sum
+  std::optional<double> target_rate_hz;               ///< `rate` tells where each trigger reaches it
   std::vector<std::int32_t> min_samples_over;         ///< scan of time-over-threshold triggers; may be empty
 };
 
@@ -116,6 +117,7 @@ struct Scenario {
   std::vector<TriggerPlan> triggers;                  ///< in file order
   bool has_tank{false};                               ///< [tank] is there: synthetic traces can be made
   GeneratorConfig generator;
+  bool has_station{false};                            ///< [station] is there: firings can find it busy
   CaptureConfig capture;                              ///< [station]
   std::vector<SignalPlan> signals;
   QualifyConfig qualify;
