@@ -6,7 +6,7 @@ namespace cistern {
 
 struct FrontendConfig {
   double counts_per_mv{2.048};               ///< 2^bits over the input range
-  double pulse_height_mv{1.4};               ///< peak of a mean single photo-electron, shaped
+  double pulse_height_mv{2.5};               ///< peak of a mean single photo-electron, shaped
   double shaping_time_ns{12};                ///< CR-(RC)^2 pulse (t/tau)^2 e^(-t/tau), tau
   double transit_time_spread_ns{2};          ///< Gaussian rms per photo-electron
   double charge_spread{0.35};                ///< relative rms of the single-photo-electron charge

@@ -4,6 +4,7 @@
 /// live time) and test signals of chosen size and spread. Physics and limits: docs/physics.md.
 /// Pure: all numbers come from counter-based streams, so that any stretch can be made alone.
 #include <cstdint>
+#include <memory>
 #include <string_view>
 #include <vector>
 
@@ -63,7 +64,7 @@ class TraceGenerator {
 
  private:
   struct Model;
-  const Model* model_;
+  std::unique_ptr<const Model> model_;
 };
 
 /// Pulse height and area of vertical, central muons, per channel: the VEM of the calibration.
