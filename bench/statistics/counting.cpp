@@ -8,14 +8,13 @@
 #include <limits>
 #include <numeric>
 
-
 namespace cistern {
 namespace {
 
-constexpr std::size_t groups_min = 30;          // fewer leave an index uncertain by more than a quarter
-constexpr std::size_t groups_to_tell = 200;     // Fisher's test then turns down an index above 1.2
-constexpr double mean_to_tell = 5;              // chi-squared stands for the index from about here: common practice
-constexpr double tail = 0.025;                  // the test at 95 %, central
+constexpr std::size_t groups_min = 30;       // fewer leave an index uncertain by more than a quarter
+constexpr std::size_t groups_to_tell = 200;  // Fisher's test then turns down an index above 1.2
+constexpr double mean_to_tell = 5;           // chi-squared stands for the index from about here: common practice
+constexpr double tail = 0.025;               // the test at 95 %, central
 
 constexpr std::string_view poisson_method = "Poisson (Garwood)";
 constexpr std::string_view effective_method = "Poisson on effective counts, firings divided by their dispersion";
@@ -38,10 +37,10 @@ double mean_of(const std::vector<std::int64_t>& counts) {
 
 /// What the blocks say about clustering.
 struct Clustering {
-  double index{1};            ///< the largest in blocks and in groups of them; 1 if none exceeds it
-  std::size_t freedom{0};     ///< of that index; 0: there was none
-  bool can_tell{false};       ///< enough firings for Fisher's test in at least one grouping
-  bool looks_poisson{true};   ///< in all groupings with enough firings
+  double index{1};           ///< the largest in blocks and in groups of them; 1 if none exceeds it
+  std::size_t freedom{0};    ///< of that index; 0: there was none
+  bool can_tell{false};      ///< enough firings for Fisher's test in at least one grouping
+  bool looks_poisson{true};  ///< in all groupings with enough firings
 };
 
 Clustering clustering_of(const std::vector<std::int64_t>& counts) {
@@ -74,7 +73,8 @@ double factor_of(const BlockCounts& blocks, const Clustering& clustering, double
   const boost::math::students_t student(static_cast<double>(clustering.freedom));
   // Near the middle both quantiles tend to 0, so the ratio is taken at 95 % at least.
   const double confidence = std::max(one_sided_confidence, 0.95);
-  const double ratio = boost::math::quantile(student, confidence) / boost::math::quantile(boost::math::normal(), confidence);
+  const double ratio =
+      boost::math::quantile(student, confidence) / boost::math::quantile(boost::math::normal(), confidence);
   return index_with_a_pair(clustering.index, static_cast<double>(blocks.total())) * ratio * ratio;
 }
 

@@ -15,8 +15,8 @@ namespace cistern {
 /// Firings per block of equal live time, in order of time. Blocks should be much longer than a
 /// cluster of firings; where they are not, runs of neighbouring blocks are looked at as well.
 struct BlockCounts {
-  std::vector<std::int64_t> counts;               ///< each >= 0
-  double block_s{0};                              ///< > 0 where there are counts
+  std::vector<std::int64_t> counts;  ///< each >= 0
+  double block_s{0};                 ///< > 0 where there are counts
 
   [[nodiscard]] std::int64_t total() const;
   [[nodiscard]] double live_time_s() const;
@@ -25,9 +25,9 @@ struct BlockCounts {
 /// Fisher's index of dispersion against a Poisson law: (n - 1) * index follows chi-squared with
 /// n - 1 degrees of freedom (R. A. Fisher, Statistical Methods for Research Workers, 1925).
 struct Dispersion {
-  double index{1};                                ///< variance over mean; 1 for a Poisson law
-  double p_low{1};                                ///< probability of an index at most this
-  double p_high{1};                               ///< probability of an index at least this
+  double index{1};   ///< variance over mean; 1 for a Poisson law
+  double p_low{1};   ///< probability of an index at most this
+  double p_high{1};  ///< probability of an index at least this
 };
 
 /// Absent with fewer than two counts or when all are 0.
@@ -35,12 +35,12 @@ struct Dispersion {
 
 struct RateEstimate {
   double rate_hz{0};
-  Limits two_sided;                               ///< no firing: low is 0; no live time: high is +inf
-  double dispersion{1};                           ///< variance over mean that the limits allow for, >= 1
-  std::optional<double> dispersion_p_low;         ///< of the given blocks; absent where they cannot tell
+  Limits two_sided;                        ///< no firing: low is 0; no live time: high is +inf
+  double dispersion{1};                    ///< variance over mean that the limits allow for, >= 1
+  std::optional<double> dispersion_p_low;  ///< of the given blocks; absent where they cannot tell
   std::optional<double> dispersion_p_high;
-  bool poisson_applies{false};                    ///< enough firings to tell, and they look like a Poisson law
-  std::string_view method{"no live time"};        ///< how the limits were found, in words for a report
+  bool poisson_applies{false};              ///< enough firings to tell, and they look like a Poisson law
+  std::string_view method{"no live time"};  ///< how the limits were found, in words for a report
 };
 
 [[nodiscard]] RateEstimate estimate_rate(const BlockCounts& blocks, double confidence = 0.95);

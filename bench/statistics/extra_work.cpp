@@ -43,7 +43,9 @@ std::optional<double> extra_live_time_s(const BlockCounts& blocks, double bound_
 std::optional<std::int64_t> extra_trials(std::int64_t successes, std::int64_t trials, double bound, double confidence) {
   if (trials == 0) return {};
   const double proportion = static_cast<double>(successes) / static_cast<double>(trials);
-  const auto scaled = [](double factor, std::int64_t count) { return std::llround(factor * static_cast<double>(count)); };
+  const auto scaled = [](double factor, std::int64_t count) {
+    return std::llround(factor * static_cast<double>(count));
+  };
   const auto factor = work_factor([&](double more) {
     const std::int64_t more_trials = scaled(more, trials);
     const std::int64_t more_successes = std::llround(proportion * static_cast<double>(more_trials));

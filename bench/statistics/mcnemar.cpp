@@ -59,7 +59,8 @@ double paired_difference_low(std::int64_t only_first, std::int64_t only_second, 
   return one_sided_limit(only_first, only_second, pairs, normal_quantile(confidence));
 }
 
-double paired_difference_high(std::int64_t only_first, std::int64_t only_second, std::int64_t pairs, double confidence) {
+double paired_difference_high(std::int64_t only_first, std::int64_t only_second, std::int64_t pairs,
+                              double confidence) {
   return one_sided_limit(only_first, only_second, pairs, -normal_quantile(confidence));
 }
 

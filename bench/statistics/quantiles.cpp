@@ -54,9 +54,8 @@ double quantile_low(std::span<const double> sorted, double fraction, double conf
 double quantile_high(std::span<const double> sorted, double fraction, double confidence) {
   check(sorted, fraction);
   // The r-th smallest lies below the true quantile when at least r values lie below it.
-  const std::size_t rank = first_rank(sorted.size(), [&](std::size_t r) {
-    return probability_below(r, sorted.size(), fraction) >= confidence;
-  });
+  const std::size_t rank = first_rank(
+      sorted.size(), [&](std::size_t r) { return probability_below(r, sorted.size(), fraction) >= confidence; });
   return rank > sorted.size() ? infinity : sorted[rank - 1];
 }
 

@@ -7,7 +7,7 @@
 
 namespace cistern {
 
-enum class Verdict { Met, Undecided, NotMet };    ///< in order: the later is the worse
+enum class Verdict { Met, Undecided, NotMet };  ///< in order: the later is the worse
 
 [[nodiscard]] std::string_view name_of(Verdict verdict);  ///< "met", "undecided", "not met"
 

@@ -32,12 +32,13 @@ constexpr int runs = 1000;
 
 struct Coverage {
   double share{0};
-  double low_misses{0};   ///< one-sided 95 % lower limit above the truth
+  double low_misses{0};  ///< one-sided 95 % lower limit above the truth
   double high_misses{0};
 };
 
 Coverage coverage_of(const ClusterLaw& law, int blocks, double expected_total) {
-  RandomStream random(seed, Purpose::PropertyTest, static_cast<std::uint64_t>(blocks * 100000) + static_cast<std::uint64_t>(expected_total));
+  RandomStream random(seed, Purpose::PropertyTest,
+                      static_cast<std::uint64_t>(blocks * 100000) + static_cast<std::uint64_t>(expected_total));
   Coverage coverage;
   for (int run = 0; run < runs; ++run) {
     const BlockCounts counted = clustered_counts(random, law, blocks, expected_total);
@@ -72,7 +73,7 @@ TEST_P(RateCoverage, is_not_bought_with_limits_far_too_wide) {
   EXPECT_LE(coverage.share, 0.985);
 }
 
-INSTANTIATE_TEST_SUITE_P(Laws, RateCoverage, testing::ValuesIn(laws), 
+INSTANTIATE_TEST_SUITE_P(Laws, RateCoverage, testing::ValuesIn(laws),
                          [](const auto& law) { return std::string(law.param.name); });
 
 TEST(PoissonLimits, would_fail_if_pairs_were_taken_for_single_firings) {

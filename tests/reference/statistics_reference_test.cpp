@@ -44,7 +44,10 @@ TEST(StatisticsReference, clopper_pearson_two_sided) {
 
 TEST(StatisticsReference, no_event_in_n_trials_one_sided) {
   const char* source = "Clopper and Pearson 1934";
-  const struct { int trials; double exact; } rows[] = {{10, 0.258866}, {30, 0.0950339}, {100, 0.0295130}, {1000, 0.00299125}};
+  const struct {
+    int trials;
+    double exact;
+  } rows[] = {{10, 0.258866}, {30, 0.0950339}, {100, 0.0295130}, {1000, 0.00299125}};
   for (const auto& row : rows) {
     const double high = clopper_pearson_high(0, row.trials, 0.95);
     check(source, "none, one-sided 95 %", row.exact, high, 1e-6);
@@ -65,7 +68,8 @@ TEST(StatisticsReference, poisson_one_sided_limits) {
 TEST(StatisticsReference, poisson_central_limits) {
   const char* source = "Garwood 1936";
   check_counts(source, "central lower",
-               {0, 0.0253, 0.2422, 0.6187, 1.0899, 1.6235, 2.2019, 2.8144, 3.4538, 4.1154, 4.7954}, 0, central_low, 0.95, 1e-4);
+               {0, 0.0253, 0.2422, 0.6187, 1.0899, 1.6235, 2.2019, 2.8144, 3.4538, 4.1154, 4.7954}, 0, central_low,
+               0.95, 1e-4);
   check_counts(source, "central upper",
                {3.6889, 5.5716, 7.2247, 8.7673, 10.2416, 11.6683, 13.0595, 14.4227, 15.7632, 17.0848, 18.3904}, 0,
                central_high, 0.95, 1e-4);
@@ -79,7 +83,9 @@ TEST(StatisticsReference, poisson_central_limits) {
 }
 
 /// With k + 1 = freedom / 2 the upper Poisson limit is half a quantile of chi-squared.
-double chi_squared_quantile(int freedom, double probability) { return 2 * garwood_high(freedom / 2.0 - 1, probability); }
+double chi_squared_quantile(int freedom, double probability) {
+  return 2 * garwood_high(freedom / 2.0 - 1, probability);
+}
 
 TEST(StatisticsReference, chi_squared_quantiles) {
   const char* source = "chi-squared tables, any handbook";
@@ -117,8 +123,11 @@ std::vector<std::int64_t> counts_with_index(int blocks, double index) {
 
 TEST(StatisticsReference, quantiles_of_the_index_of_dispersion) {
   const char* source = "Fisher 1925";
-  const struct { int blocks; double low; double high; } rows[] = {
-      {10, 0.30004, 2.11364}, {30, 0.55335, 1.57663}, {100, 0.74102, 1.29719}, {1000, 0.91422, 1.08958}};
+  const struct {
+    int blocks;
+    double low;
+    double high;
+  } rows[] = {{10, 0.30004, 2.11364}, {30, 0.55335, 1.57663}, {100, 0.74102, 1.29719}, {1000, 0.91422, 1.08958}};
   for (const auto& row : rows) {
     const auto low = dispersion_of(counts_with_index(row.blocks, row.low)).value();
     const auto high = dispersion_of(counts_with_index(row.blocks, row.high)).value();
@@ -147,26 +156,34 @@ TEST(StatisticsReference, dispersion_of_clusters) {
   const char* source = "compound Poisson, F = E[K^2]/E[K]";
   const ClusterRow rows[] = {
       {{"geometric sizes of mean 1.5", 1.5, [](RandomStream& random) { return geometric_size(random, 1.5); }}, 2},
-      {{"1 + Poisson(0.2)", 1.2, [](RandomStream& random) { return 1 + static_cast<int>(random.poisson(0.2)); }}, 1.366667},
+      {{"1 + Poisson(0.2)", 1.2, [](RandomStream& random) { return 1 + static_cast<int>(random.poisson(0.2)); }},
+       1.366667},
       {{"fixed size 3", 3, [](RandomStream&) { return 3; }}, 3},
   };
   for (const ClusterRow& row : rows) {
     RandomStream random(48, Purpose::PropertyTest, 0);
     const BlockCounts counted = clustered_counts(random, row.law, 200'000, 1e6);
-    check(source, row.law.name, row.factor, dispersion_of(counted.counts)->index, 4 * row.factor * std::sqrt(2 / 2e5) * 1.2);
+    check(source, row.law.name, row.factor, dispersion_of(counted.counts)->index,
+          4 * row.factor * std::sqrt(2 / 2e5) * 1.2);
   }
 }
 
 TEST(StatisticsReference, dispersion_of_delayed_pairs) {
   const char* source = "factorial cumulant of a block";
-  const struct { const char* name; double x; double factor; } rows[] = {
-      {"pairs, T = 0.1 tau", 0.1, 1.048374}, {"pairs, T = tau", 1, 1.367879}, {"pairs, T = 10 tau", 10, 1.900005},
-      {"pairs, T = 100 tau", 100, 1.990000}};
+  const struct {
+    const char* name;
+    double x;
+    double factor;
+  } rows[] = {{"pairs, T = 0.1 tau", 0.1, 1.048374},
+              {"pairs, T = tau", 1, 1.367879},
+              {"pairs, T = 10 tau", 10, 1.900005},
+              {"pairs, T = 100 tau", 100, 1.990000}};
   for (const auto& row : rows) {
     RandomStream random(49, Purpose::PropertyTest, 0);
     const ClusterLaw law{row.name, 2, [](RandomStream&) { return 2; }, 1 / row.x};
     const BlockCounts counted = clustered_counts(random, law, 200'000, 1e6);
-    check(source, row.name, row.factor, dispersion_of(counted.counts)->index, 4 * row.factor * std::sqrt(2 / 2e5) * 1.2);
+    check(source, row.name, row.factor, dispersion_of(counted.counts)->index,
+          4 * row.factor * std::sqrt(2 / 2e5) * 1.2);
   }
 }
 

@@ -15,7 +15,7 @@ struct ClusterLaw {
   const char* name;
   double mean_size;
   std::function<int(RandomStream&)> size;
-  double delay_blocks{0};   ///< mean of an exponential, in blocks; 0: all in the same block
+  double delay_blocks{0};  ///< mean of an exponential, in blocks; 0: all in the same block
 };
 
 inline int geometric_size(RandomStream& random, double mean) {

@@ -9,7 +9,9 @@
 namespace cistern {
 namespace {
 
-BlockCounts same_in_all(std::size_t blocks, std::int64_t count) { return {std::vector<std::int64_t>(blocks, count), 0.5}; }
+BlockCounts same_in_all(std::size_t blocks, std::int64_t count) {
+  return {std::vector<std::int64_t>(blocks, count), 0.5};
+}
 
 ClusterLaw singles() {
   return {"single", 1, [](RandomStream&) { return 1; }};
@@ -76,7 +78,8 @@ TEST(Rate, of_pairs_has_limits_wider_by_the_root_of_two) {
     const RateEstimate estimate = estimate_rate(blocks);
     EXPECT_FALSE(estimate.poisson_applies);
     const Limits poisson = garwood(static_cast<double>(blocks.total()), 0.95);
-    const double widening = (estimate.two_sided.high - estimate.two_sided.low) * blocks.live_time_s() / (poisson.high - poisson.low);
+    const double widening =
+        (estimate.two_sided.high - estimate.two_sided.low) * blocks.live_time_s() / (poisson.high - poisson.low);
     widening_squared += widening * widening / runs;
   }
   EXPECT_GT(widening_squared, 2.0);
@@ -85,9 +88,10 @@ TEST(Rate, of_pairs_has_limits_wider_by_the_root_of_two) {
 
 TEST(Rate, of_few_single_firings_is_not_trusted_to_be_poisson) {
   BlockCounts few = same_in_all(120, 0);
-  for (const std::size_t block : {3U, 40U, 41U, 90U}) few.counts[block] = 1;
-  EXPECT_GT(rate_at_most(few, 0.95) * few.live_time_s(), garwood_high(4, 0.95));
-  EXPECT_LT(rate_at_most(few, 0.95) * few.live_time_s(), 1.4 * garwood_high(4, 0.95));
+  for (const std::size_t block : {3U, 33U, 63U, 93U}) few.counts[block] = 1;
+  // Squares over firings with a pair added, (4 + 4) / (4 + 2); Student's t with 119 degrees of freedom is 1.6578.
+  EXPECT_NEAR(firings_per_independent_one(few, 0.95), 8.0 / 6 * std::pow(1.6578 / 1.6449, 2), 1e-3);
+  EXPECT_GT(rate_at_most(few, 0.95) * few.live_time_s(), 1.1 * garwood_high(4, 0.95));
 }
 
 TEST(Rate, is_not_called_poisson_on_too_few_blocks_or_firings) {
@@ -112,6 +116,12 @@ TEST(Rate, is_never_given_narrower_limits_than_poisson) {
   EXPECT_EQ(estimate.dispersion, 1);
   EXPECT_LE(estimate.two_sided.low, garwood(10000, 0.95).low / regular.live_time_s());
   EXPECT_GE(estimate.two_sided.high, garwood(10000, 0.95).high / regular.live_time_s());
+}
+
+TEST(Rate, allows_for_an_index_that_few_blocks_leave_uncertain) {
+  // Student's t tables: 1.8331 with 9 degrees of freedom, 1.6449 for a normal law; both at 95 %.
+  EXPECT_NEAR(firings_per_independent_one(same_in_all(10, 1000), 0.95), std::pow(1.8331 / 1.6449, 2), 1e-3);
+  EXPECT_NEAR(firings_per_independent_one(same_in_all(1000, 10), 0.95), 1, 5e-3);
 }
 
 TEST(Rate, one_sided_limits_are_nearer_than_two_sided) {

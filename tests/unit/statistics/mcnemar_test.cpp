@@ -49,7 +49,7 @@ TEST(PairedDifference, turns_its_sign_with_the_order) {
 TEST(PairedDifference, has_limits_even_when_no_pair_is_discordant) {
   const Limits limits = paired_difference(0, 0, 50, 0.95);
   EXPECT_NEAR(limits.low, -limits.high, 1e-12);
-  EXPECT_GT(limits.high, 0.05);   // 3/n, the rule of three for one side, is 0.06
+  EXPECT_GT(limits.high, 0.05);  // 3/n, the rule of three for one side, is 0.06
   EXPECT_LT(limits.high, 0.09);
 }
 
