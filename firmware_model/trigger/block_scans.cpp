@@ -48,28 +48,9 @@ bool MarkAbove(const std::int16_t* codes, std::size_t samples, std::int16_t limi
   return any != 0;
 }
 
-DifferenceSums SumDifferences(const std::int16_t* entering, const std::int16_t* leaving) {
-  const Codes16 d;
-  const hn::RepartitionToWide<Codes16> wide;
-  const auto zero = hn::Zero(wide);
-  auto all = zero;
-  auto positive = zero;
-  const std::size_t half = hn::Lanes(wide);
-  const hn::Half<Codes16> narrow;
-  for (std::size_t s = 0; s < 64; s += half) {
-    const auto difference =
-        hn::Sub(hn::PromoteTo(wide, hn::LoadU(narrow, entering + s)), hn::PromoteTo(wide, hn::LoadU(narrow, leaving + s)));
-    all = hn::Add(all, difference);
-    positive = hn::Add(positive, hn::Max(difference, zero));
-  }
-  static_cast<void>(d);
-  return {hn::GetLane(hn::SumOfLanes(wide, all)), hn::GetLane(hn::SumOfLanes(wide, positive))};
-}
-
 std::int64_t SumCodes(const std::int16_t* codes, std::size_t samples) {
   const Codes16 d;
   const std::size_t lanes = hn::Lanes(d);
-  std::int64_t total = 0;
   auto a = hn::Zero(d);
   auto b = hn::Zero(d);
   std::size_t s = 0;
@@ -79,9 +60,10 @@ std::int64_t SumCodes(const std::int16_t* codes, std::size_t samples) {
   }
   alignas(128) std::int16_t lane[64];
   hn::StoreU(hn::Add(a, b), d, lane);
-  for (std::size_t i = 0; i < lanes; ++i) total += lane[i];
-  for (; s < samples; ++s) total += codes[s];
-  return total;
+  std::uint32_t total = 0;
+  for (std::size_t i = 0; i < lanes; ++i) total += static_cast<std::uint16_t>(lane[i]);
+  for (; s < samples; ++s) total += static_cast<std::uint16_t>(codes[s]);
+  return total & 0xffff;
 }
 
 }  // namespace cistern::HWY_NAMESPACE
@@ -91,15 +73,10 @@ HWY_AFTER_NAMESPACE();
 namespace cistern {
 
 HWY_EXPORT(MarkAbove);
-HWY_EXPORT(SumDifferences);
 HWY_EXPORT(SumCodes);
 
 bool mark_above(const std::int16_t* codes, std::size_t samples, std::int16_t limit, std::uint64_t* words) {
   return HWY_DYNAMIC_DISPATCH(MarkAbove)(codes, samples, limit, words);
-}
-
-DifferenceSums sum_differences(const std::int16_t* entering, const std::int16_t* leaving) {
-  return HWY_DYNAMIC_DISPATCH(SumDifferences)(entering, leaving);
 }
 
 std::int64_t sum_codes(const std::int16_t* codes, std::size_t samples) {

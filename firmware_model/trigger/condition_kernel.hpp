@@ -8,6 +8,7 @@
 #include <memory>
 #include <span>
 
+#include "firmware_model/trigger/block_scans.hpp"
 #include "firmware_model/trigger/settings.hpp"
 #include "traces/waveform/codes.hpp"
 
@@ -17,7 +18,7 @@ namespace cistern {
 inline constexpr std::size_t samples_per_piece = 8'192;
 inline constexpr std::size_t words_per_piece = samples_per_piece / 64;
 
-/// Bit s % 64 of word s / 64 belongs to sample s of the piece.
+/// Bit b of word w belongs to place 64 w + b of the piece.
 using PieceWords = std::array<std::uint64_t, words_per_piece>;
 
 class ConditionKernel {
@@ -26,23 +27,26 @@ class ConditionKernel {
   [[nodiscard]] virtual std::unique_ptr<ConditionKernel> clone() const = 0;
   virtual void reset() = 0;
 
-  /// Takes a piece of 1 to samples_per_piece samples.
-  /// \param condition  bit by bit, whether the condition is true; written only when true is returned
+  /// Takes the next samples. Words stand still in time, so a piece may begin in the middle of one.
+  /// \param first_place  place of the piece's first sample in its first word; unless 0, the piece ends in that word
+  /// \param condition    whether the condition is true, 0 outside the piece; written only when true is returned
   /// \return false when it is true nowhere in the piece
-  [[nodiscard]] virtual bool process(const CodesView& piece, PieceWords& condition) = 0;
+  [[nodiscard]] virtual bool process(const CodesView& piece, std::size_t first_place, PieceWords& condition) = 0;
 
-  /// Sample of the last piece at which the window that ends in `sample` first has an over-sample of a
-  /// channel that fulfils the condition there; negative: before the piece.
-  [[nodiscard]] virtual std::int64_t onset(std::int64_t sample) const = 0;
+  /// The earliest over-sample, as a place of the last piece (negative: before it), in the window that ends
+  /// in `place`, where the condition is true, among the channels that make it so.
+  [[nodiscard]] virtual std::int64_t onset(std::size_t place) const = 0;
 };
 
 [[nodiscard]] std::unique_ptr<ConditionKernel> make_condition_kernel(const ConditionSettings& settings);
 
-/// Bits that are set in at least `majority` of the words.
-[[nodiscard]] std::uint64_t at_least(std::span<const std::uint64_t> words, std::int32_t majority);
+/// Sets bits of `condition` where at least `majority` channels have theirs set; bits outside the stretch are 0.
+/// \return false when that is nowhere; then `condition` means nothing
+[[nodiscard]] bool combine(std::span<const std::uint64_t* const> channels, std::int32_t majority, Stretch stretch,
+                           PieceWords& condition);
 
 /// The lowest `count` bits, 0 to 64.
-[[nodiscard]] inline std::uint64_t low_bits(std::size_t count) {
+[[nodiscard]] constexpr std::uint64_t low_bits(std::size_t count) {
   return count >= 64 ? ~std::uint64_t{0} : (std::uint64_t{1} << count) - 1;
 }
 

@@ -2,24 +2,23 @@
 
 #include <algorithm>
 #include <bit>
-#include <limits>
-#include <utility>
 
 #include "firmware_model/trigger/condition_kernel.hpp"
+#include "traces/base/errors.hpp"
 
 namespace cistern {
-namespace {
-constexpr std::int64_t never = std::numeric_limits<std::int64_t>::max();
-}  // namespace
 
 TriggerKernel::TriggerKernel(const TriggerSettings& settings)
-    : stages_(settings.firing), reach_(reach_samples(settings.condition)) {
-  assert_valid(settings, settings.condition.baseline_counts.size());
+    : channels_(settings.condition.baseline_counts.size()),
+      stages_(settings.firing),
+      reach_(reach_samples(settings.condition)) {
+  assert_valid(settings, channels_);
   condition_ = make_condition_kernel(settings.condition);
 }
 
 TriggerKernel::TriggerKernel(const TriggerKernel& other)
-    : condition_(other.condition_->clone()),
+    : channels_(other.channels_),
+      condition_(other.condition_->clone()),
       stages_(other.stages_),
       reach_(other.reach_),
       seen_(other.seen_),
@@ -38,14 +37,14 @@ void TriggerKernel::reset() {
 }
 
 void TriggerKernel::process(const CodesView& block, std::vector<Firing>& firings) {
+  CISTERN_ASSERT(block.channels() == channels_);
   PieceWords condition;
-  for (std::size_t first = 0; first < block.samples(); first += samples_per_piece) {
-    const std::size_t samples = std::min(samples_per_piece, block.samples() - first);
-    if (condition_->process(block.part(first, samples), condition)) {
-      for (std::size_t offset = 0; offset < samples; offset += 64) {
-        const auto count = static_cast<unsigned>(std::min<std::size_t>(64, samples - offset));
-        take_word(condition[offset / 64] & low_bits(count), seen_, offset, count, firings);
-      }
+  std::size_t samples = 0;
+  for (std::size_t first = 0; first < block.samples(); first += samples) {
+    const auto place = static_cast<std::size_t>(seen_ % 64);
+    samples = std::min(place == 0 ? samples_per_piece : 64 - place, block.samples() - first);
+    if (condition_->process(block.part(first, samples), place, condition)) {
+      take_piece(condition, {place, samples}, firings);
     } else {
       condition_was_true_ = false;
     }
@@ -53,30 +52,42 @@ void TriggerKernel::process(const CodesView& block, std::vector<Firing>& firings
   }
 }
 
-/// Sample of the next firing from bit `from` on: an edge, or a re-firing after hold-off.
-std::int64_t TriggerKernel::next_firing(std::uint64_t condition, std::uint64_t edges, std::int64_t first_sample,
-                                        unsigned from) const {
-  const std::uint64_t left = edges & ~low_bits(from);
-  std::int64_t next = left == 0 ? never : first_sample + std::countr_zero(left);
-  if (const auto again = stages_.refire_sample()) {
-    const std::int64_t bit = *again - first_sample;
-    if (bit >= from && bit < 64 && ((condition >> bit) & 1) != 0) next = std::min(next, *again);
+void TriggerKernel::take_piece(const PieceWords& condition, Stretch stretch, std::vector<Firing>& firings) {
+  const std::size_t end = stretch.first + stretch.samples;
+  for (std::size_t word = 0; 64 * word < end; ++word) {
+    const std::uint64_t before = condition_was_true_ ? std::uint64_t{1} << (word == 0 ? stretch.first : 0) : 0;
+    if (condition[word] != 0) take_word(condition[word], before, 64 * word, firings);
+    const std::size_t last = std::min<std::size_t>(63, end - 64 * word - 1);
+    condition_was_true_ = ((condition[word] >> last) & 1) != 0;
   }
-  return next;
 }
 
-void TriggerKernel::take_word(std::uint64_t condition, std::int64_t piece_start, std::size_t offset, unsigned samples,
+/// \param was_true     bits whose sample before was true, as far as `condition` does not say
+/// \param first_place  place of the word's first bit in the piece
+void TriggerKernel::take_word(std::uint64_t condition, std::uint64_t was_true, std::size_t first_place,
                               std::vector<Firing>& firings) {
-  const std::uint64_t edges = condition & ~((condition << 1) | (condition_was_true_ ? 1 : 0));
-  const std::int64_t first_sample = piece_start + static_cast<std::int64_t>(offset);
-  unsigned from = 0;
-  while (condition != 0 && from < 64) {
-    const std::int64_t sample = next_firing(condition, edges, first_sample, from);
-    if (sample == never) break;
-    firings.push_back({sample, piece_start + condition_->onset(sample - piece_start), stages_.judge(sample), sample < reach_});
-    from = static_cast<unsigned>(sample - first_sample) + 1;
+  const std::uint64_t edges = condition & ~((condition << 1) | was_true);
+  const std::int64_t piece_start = seen_ / 64 * 64;  // of place 0
+  const std::int64_t word_start = piece_start + static_cast<std::int64_t>(first_place);
+  std::uint64_t left = ~std::uint64_t{0};
+  while (const auto bit = next_firing(condition & left, edges & left, word_start)) {
+    const std::int64_t onset = piece_start + condition_->onset(first_place + *bit);
+    const std::int64_t sample = word_start + *bit;
+    firings.push_back({sample, std::max<std::int64_t>(0, onset), stages_.judge(sample), sample < reach_});
+    left = ~low_bits(*bit + 1);
   }
-  condition_was_true_ = ((condition >> (samples - 1)) & 1) != 0;
+}
+
+/// Bit of the next edge, or of a re-firing after hold-off if that is earlier.
+std::optional<unsigned> TriggerKernel::next_firing(std::uint64_t condition, std::uint64_t edges,
+                                                   std::int64_t word_start) const {
+  std::uint64_t fires = edges;
+  if (const auto again = stages_.refire_sample()) {
+    const std::int64_t bit = *again - word_start;
+    if (bit >= 0 && bit < 64) fires |= condition & (std::uint64_t{1} << bit);
+  }
+  if (fires == 0) return {};
+  return static_cast<unsigned>(std::countr_zero(fires));
 }
 
 }  // namespace cistern

@@ -4,16 +4,16 @@
 /// vectorised; the instruction set is chosen at run time and never shows in a result.
 #include <cstdint>
 #include <memory>
+#include <optional>
 #include <vector>
 
+#include "firmware_model/trigger/condition_kernel.hpp"
 #include "firmware_model/trigger/firing.hpp"
 #include "firmware_model/trigger/firing_stages.hpp"
 #include "firmware_model/trigger/settings.hpp"
 #include "traces/waveform/codes.hpp"
 
 namespace cistern {
-
-class ConditionKernel;
 
 /// Copyable: a copy goes on from the same state. How samples are cut into blocks changes nothing.
 class TriggerKernel {
@@ -32,11 +32,13 @@ class TriggerKernel {
   [[nodiscard]] std::int64_t samples_seen() const noexcept { return seen_; }
 
  private:
-  void take_word(std::uint64_t condition, std::int64_t first_sample, std::size_t offset, unsigned samples,
+  void take_piece(const PieceWords& condition, Stretch stretch, std::vector<Firing>& firings);
+  void take_word(std::uint64_t condition, std::uint64_t was_true, std::size_t first_place,
                  std::vector<Firing>& firings);
-  [[nodiscard]] std::int64_t next_firing(std::uint64_t condition, std::uint64_t edges, std::int64_t first_sample,
-                                         unsigned from) const;
+  [[nodiscard]] std::optional<unsigned> next_firing(std::uint64_t condition, std::uint64_t edges,
+                                                    std::int64_t word_start) const;
 
+  std::size_t channels_;
   std::unique_ptr<ConditionKernel> condition_;
   FiringStages stages_;
   std::int64_t reach_;

@@ -4,6 +4,7 @@
 /// Internal to the kernel.
 #include <vector>
 
+#include "firmware_model/trigger/block_scans.hpp"
 #include "firmware_model/trigger/condition_kernel.hpp"
 
 namespace cistern {
@@ -11,34 +12,37 @@ namespace cistern {
 class OverCondition : public ConditionKernel {
  public:
   explicit OverCondition(const ConditionSettings& settings);
-  [[nodiscard]] std::unique_ptr<ConditionKernel> clone() const override { return std::make_unique<OverCondition>(*this); }
+  [[nodiscard]] std::unique_ptr<ConditionKernel> clone() const override {
+    return std::make_unique<OverCondition>(*this);
+  }
   void reset() override;
-  [[nodiscard]] bool process(const CodesView& piece, PieceWords& condition) override;
-  [[nodiscard]] std::int64_t onset(std::int64_t sample) const override;
+  [[nodiscard]] bool process(const CodesView& piece, std::size_t first_place, PieceWords& condition) override;
+  [[nodiscard]] std::int64_t onset(std::size_t place) const override;
 
  private:
-  /// One enabled channel. `bits` holds the over-bits of `history_` samples before the piece, then
-  /// those of the piece; sample s of the piece is bit history_ + s.
+  /// One enabled channel.
   struct Channel {
     std::size_t index{0};
-    std::int16_t limit{0};                    ///< codes above it are over
-    std::vector<std::uint64_t> bits;
-    std::int32_t count{0};                    ///< over-samples in the window that ends before the word at hand
+    std::int16_t limit{0};            ///< codes above it are over
+    std::vector<std::uint64_t> bits;  ///< over or not: at least a window of the past, then the piece from word now_ on
+    std::int64_t count{0};            ///< over-samples in the window that ends with the last piece
+    bool any{false};                  ///< fulfilled somewhere in the last piece; if not, `fulfilled` is older
+    PieceWords fulfilled{};
   };
 
-  [[nodiscard]] bool mark_piece(const CodesView& piece);
-  [[nodiscard]] std::uint64_t condition_of_word(std::size_t word, unsigned samples);
-  [[nodiscard]] std::uint64_t fulfilled(Channel& channel, std::uint64_t entering, std::uint64_t leaving, unsigned samples) const;
-  [[nodiscard]] bool fulfils_at(const Channel& channel, std::int64_t sample) const;
-  void forget(std::size_t samples);
+  void make_room();
+  [[nodiscard]] bool mark(Channel& channel, std::span<const std::int16_t> codes, std::size_t first_place);
+  void count(Channel& channel, bool any_over, Stretch stretch);
+  [[nodiscard]] const std::uint64_t* fulfilled(const Channel& channel) const;
+  [[nodiscard]] std::int64_t first_over(const Channel& channel, std::size_t place) const;
 
   std::int32_t window_;
   std::int32_t needed_;
   std::int32_t majority_;
-  std::size_t history_;                       ///< window rounded up to whole words
+  std::size_t history_words_;  ///< the window rounded up
   std::vector<Channel> channels_;
-  bool history_is_empty_{true};
-  std::size_t last_samples_{0};              ///< of the last piece, still in `bits` behind the history
+  std::size_t now_{0};   ///< word of `bits` in which the last piece begins
+  std::size_t next_{0};  ///< word of `bits` in which the next piece begins
 };
 
 }  // namespace cistern

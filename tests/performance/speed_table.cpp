@@ -1,0 +1,27 @@
+#include "tests/performance/speed_table.hpp"
+
+#include <fmt/core.h>
+
+#include <algorithm>
+#include <chrono>
+
+namespace cistern {
+
+double seconds_of(const std::function<void()>& work) {
+  const auto begin = std::chrono::steady_clock::now();
+  work();
+  return std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
+}
+
+void print_speeds(const std::vector<SpeedRow>& rows, int rounds) {
+  std::vector<double> best(rows.size(), 0);
+  for (int round = 0; round < rounds; ++round) {
+    for (std::size_t i = 0; i < rows.size(); ++i) best[i] = std::max(best[i], rows[i].million_clocks_per_s());
+  }
+  fmt::print("{:<64}{:>16}{:>12}\n", "", "million clocks/s", "of the read");
+  for (std::size_t i = 0; i < rows.size(); ++i) {
+    fmt::print("{:<64}{:>16.1f}{:>11.1f}%\n", rows[i].name, best[i], 100 * best[i] / best.front());
+  }
+}
+
+}  // namespace cistern

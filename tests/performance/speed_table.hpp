@@ -1,0 +1,24 @@
+#pragma once
+/// \file
+/// Speeds measured side by side: every round runs every row once, so that a slow minute of the machine
+/// hits all of them; the best round counts.
+#include <functional>
+#include <string>
+#include <vector>
+
+namespace cistern {
+
+/// One line of the table. To add another way to run a trigger, add a row.
+struct SpeedRow {
+  std::string name;
+  std::function<double()>
+      million_clocks_per_s;  ///< runs once and says how fast it was; a clock is one sample of every channel
+};
+
+/// Seconds that `work` takes.
+[[nodiscard]] double seconds_of(const std::function<void()>& work);
+
+/// Runs the rows `rounds` times in turns and prints, for each, its best speed and the ratio to the first row.
+void print_speeds(const std::vector<SpeedRow>& rows, int rounds);
+
+}  // namespace cistern
