@@ -115,11 +115,8 @@ HWY_INLINE void store_normals(const NormalTable& table, WordVector words, float*
   const hn::RebindToSigned<Words> integers;
   const hn::RebindToFloat<Words> floats;
   const auto tail = hn::Add(hn::ConvertTo(floats, hn::BitCast(integers, hn::ShiftRight<1>(words))), hn::Set(floats, 0.5F));
-  const auto bits = hn::ShiftRight<NormalTable::mantissa_shift>(hn::BitCast(d, tail));
-  const auto piece = hn::BitCast(integers, hn::Sub(bits, hn::Set(d, NormalTable::first_index)));
-  const auto base = hn::GatherIndex(floats, table.base.data(), piece);
-  const auto slope = hn::GatherIndex(floats, table.slope.data(), piece);
-  const auto size = hn::Add(base, hn::Mul(slope, tail));
+  const auto cell = hn::Sub(hn::ShiftRight<NormalTable::mantissa_shift>(hn::BitCast(d, tail)), hn::Set(d, NormalTable::first_cell));
+  const auto size = hn::GatherIndex(floats, table.size.data(), hn::BitCast(integers, cell));
   hn::StoreU(hn::Xor(size, hn::BitCast(floats, hn::ShiftLeft<31>(words))), floats, to);
 }
 

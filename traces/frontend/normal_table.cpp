@@ -5,23 +5,26 @@
 namespace cistern {
 namespace {
 
-double size_at(double tail) {
+constexpr double half = 0x1p31;  // the tail probability 1/2
+
+double start_of(std::size_t cell) {
+  return std::bit_cast<float>((static_cast<std::uint32_t>(cell) + NormalTable::first_cell) << NormalTable::mantissa_shift);
+}
+
+double density_at(double tail) {
   const boost::math::normal standard;
-  return boost::math::quantile(boost::math::complement(standard, tail * 0x1p-32));
+  return boost::math::pdf(standard, boost::math::quantile(boost::math::complement(standard, tail * 0x1p-32)));
 }
 
 NormalTable make_table() {
-  NormalTable table{};
-  for (std::size_t i = 0; i < NormalTable::pieces; ++i) {
-    const auto start = std::bit_cast<float>((static_cast<std::uint32_t>(i) + NormalTable::first_index) << NormalTable::mantissa_shift);
-    const auto end = std::bit_cast<float>((static_cast<std::uint32_t>(i) + 1 + NormalTable::first_index) << NormalTable::mantissa_shift);
-    if (start >= 0x1p31F) break;  // beyond one half: reached by rounding only, and the size is 0
-    const double slope = (size_at(end) - size_at(start)) / (static_cast<double>(end) - start);
-    const double middle = 0.5 * (static_cast<double>(start) + end);
-    const double above = size_at(start) + slope * (middle - start) - size_at(middle);
-    // A chord lies above the curve, by two thirds of its error in the middle on average.
-    table.base[i] = static_cast<float>(size_at(start) - slope * start - above * 2 / 3);
-    table.slope[i] = static_cast<float>(slope);
+  NormalTable table{};  // cells beyond one half are reached by rounding only, and their size is 0
+  double density = density_at(start_of(0));
+  for (std::size_t cell = 0; start_of(cell) < half; ++cell) {
+    // The integral of x times the density is minus the density.
+    const double density_at_end = density_at(start_of(cell + 1));
+    const double probability = (start_of(cell + 1) - start_of(cell)) * 0x1p-32;
+    table.size[cell] = static_cast<float>((density_at_end - density) / probability);
+    density = density_at_end;
   }
   return table;
 }
