@@ -15,8 +15,8 @@ std::string heading_of(const Table& table) {
 }
 
 std::string key_text(const Table& table, const KeyDescription& key) {
-  return fmt::format("{}.{}\n  {}\n  unit: {}\n  default: {}\n  accepted: {}\n", table.name, key.name, key.sentence, key.unit.empty() ? "none" : key.unit, key.fallback,
-                     key.range);
+  return fmt::format("{}.{}\n  {}\n  unit: {}\n  default: {}\n  accepted: {}\n", table.name, key.name, key.sentence,
+                     key.unit.empty() ? "none" : key.unit, key.fallback, key.range);
 }
 
 std::string table_text(const Table& table) {
@@ -89,7 +89,8 @@ std::string explain_keys(std::string_view key) {
     if (key.empty() || key == table.name) text += table_text(table) + (key.empty() ? "\n" : "");
     const std::string plain = without_entry_name(key);
     if (plain.rfind(table.name + ".", 0) != 0) continue;
-    if (const KeyDescription* own = find_key(table, std::string_view(plain).substr(table.name.size() + 1))) text += key_text(table, *own);
+    if (const KeyDescription* own = find_key(table, std::string_view(plain).substr(table.name.size() + 1)))
+      text += key_text(table, *own);
   }
   if (text.empty()) refuse_unknown(key);
   return text;
@@ -98,9 +99,11 @@ std::string explain_keys(std::string_view key) {
 std::string scenario_reference() {
   std::string text(manual_head);
   for (const Table& table : all_tables()) {
-    text += fmt::format("\n## `{}`\n\n{}\n\n| key | unit | default | accepted | meaning |\n|---|---|---|---|---|\n", heading_of(table), table.sentence);
+    text += fmt::format("\n## `{}`\n\n{}\n\n| key | unit | default | accepted | meaning |\n|---|---|---|---|---|\n",
+                        heading_of(table), table.sentence);
     for (const KeyDescription& key : table.keys) {
-      text += fmt::format("| `{}` | {} | {} | {} | {} |\n", key.name, key.unit, key.fallback, escape_pipes(key.range), escape_pipes(key.sentence));
+      text += fmt::format("| `{}` | {} | {} | {} | {} |\n", key.name, key.unit, key.fallback, escape_pipes(key.range),
+                          escape_pipes(key.sentence));
     }
   }
   return text;

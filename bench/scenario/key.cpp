@@ -33,7 +33,9 @@ bool is_name_character(char c) {
 
 }  // namespace
 
-void complain(const KeyPlace& at, const std::string& what) { throw InputError(at.place, at.key.empty() ? what : at.key + ": " + what); }
+void complain(const KeyPlace& at, const std::string& what) {
+  throw InputError(at.place, at.key.empty() ? what : at.key + ": " + what);
+}
 
 void reject(const KeyPlace& at, const toml::node& node, const std::string& expected) {
   complain(at, fmt::format("got {}, expected {}", text_of(node), expected));
@@ -50,9 +52,13 @@ std::string text_of(const toml::node& node) {
 }
 
 std::string NumberRange::text() const {
-  const auto shown = [](double value) { return std::abs(value) >= 1e15 ? fmt::format("{:g}", value) : fmt::format("{}", value); };
+  const auto shown = [](double value) {
+    return std::abs(value) >= 1e15 ? fmt::format("{:g}", value) : fmt::format("{}", value);
+  };
   const bool bounded_below = std::isfinite(low);
-  if (bounded_below && std::isfinite(high)) return fmt::format("{}{} {} {}", low_is_open ? "more than " : "from ", shown(low), low_is_open ? "and at most" : "to", shown(high));
+  if (bounded_below && std::isfinite(high))
+    return fmt::format("{}{} {} {}", low_is_open ? "more than " : "from ", shown(low),
+                       low_is_open ? "and at most" : "to", shown(high));
   if (bounded_below) return low_is_open ? "more than " + shown(low) : "at least " + shown(low);
   return "any";
 }
@@ -85,24 +91,28 @@ std::string read_text(const toml::node& node, const KeyPlace& at, const std::vec
   }
   if (!text) reject(at, node, fmt::format("one of \"{}\"", fmt::join(choices, "\", \"")));
   if (std::find(choices.begin(), choices.end(), *text) == choices.end()) {
-    reject(at, node, fmt::format("one of \"{}\"; nearest: \"{}\"", fmt::join(choices, "\", \""), nearest_word(*text, choices)));
+    reject(at, node,
+           fmt::format("one of \"{}\"; nearest: \"{}\"", fmt::join(choices, "\", \""), nearest_word(*text, choices)));
   }
   return *text;
 }
 
 std::string read_name(const toml::node& node, const KeyPlace& at) {
   const auto text = node.is_string() ? node.value<std::string>() : std::nullopt;
-  const bool good = text && !text->empty() && text->size() <= 40 && std::all_of(text->begin(), text->end(), is_name_character);
+  const bool good =
+      text && !text->empty() && text->size() <= 40 && std::all_of(text->begin(), text->end(), is_name_character);
   if (!good) reject(at, node, "a name of 1 to 40 letters, digits, - and _");
   return *text;
 }
 
 std::vector<double> read_numbers(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
-  return read_list<double>(node, at, [&](const toml::node& one, const KeyPlace& place) { return read_number(one, place, range); });
+  return read_list<double>(
+      node, at, [&](const toml::node& one, const KeyPlace& place) { return read_number(one, place, range); });
 }
 
 std::vector<std::int64_t> read_integers(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
-  return read_list<std::int64_t>(node, at, [&](const toml::node& one, const KeyPlace& place) { return read_integer(one, place, range); });
+  return read_list<std::int64_t>(
+      node, at, [&](const toml::node& one, const KeyPlace& place) { return read_integer(one, place, range); });
 }
 
 std::vector<double> read_rising(const toml::node& node, const KeyPlace& at, const NumberRange& range) {

@@ -3,13 +3,13 @@
 /// One list of keys per TOML table: name, unit, default, range, sentence, and how a value is read.
 /// Checking, --set, `explain` and the reference manual read these lists alone.
 /// Internal to bench/scenario, since it shows toml++.
+#include <toml++/toml.h>
 #include <cstdint>
 #include <functional>
 #include <limits>
 #include <optional>
 #include <string>
 #include <string_view>
-#include <toml++/toml.h>
 #include <vector>
 
 namespace cistern {
@@ -19,7 +19,7 @@ struct Scenario;
 /// Where a value stands, for messages: "FILE:LINE" or "--set KEY", and its full key.
 struct KeyPlace {
   std::string place;
-  std::string key;        ///< "trigger.long.window_samples"
+  std::string key;  ///< "trigger.long.window_samples"
 };
 
 /// A value that is not what its key wants. \param expected  "a whole number from 1 to 16"
@@ -33,9 +33,9 @@ struct KeyPlace {
 template <typename Target>
 struct Key {
   std::string name;
-  std::string unit;               ///< "" for none
-  std::string fallback;           ///< default as text; "required" or "none"
-  std::string range;              ///< what is accepted
+  std::string unit;      ///< "" for none
+  std::string fallback;  ///< default as text; "required" or "none"
+  std::string range;     ///< what is accepted
   std::string sentence;
   std::function<void(Target&, const toml::node&, const KeyPlace&)> read;
 };
@@ -62,24 +62,38 @@ struct NumberRange {
 [[nodiscard]] std::int64_t read_integer(const toml::node& node, const KeyPlace& at, const NumberRange& range);
 [[nodiscard]] bool read_switch(const toml::node& node, const KeyPlace& at);
 /// \param choices  empty: any text of 1 to 200 characters
-[[nodiscard]] std::string read_text(const toml::node& node, const KeyPlace& at, const std::vector<std::string>& choices);
+[[nodiscard]] std::string read_text(const toml::node& node, const KeyPlace& at,
+                                    const std::vector<std::string>& choices);
 /// Letters, digits, - and _; 1 to 40 characters.
 [[nodiscard]] std::string read_name(const toml::node& node, const KeyPlace& at);
 /// One number or a list of them; not empty.
 [[nodiscard]] std::vector<double> read_numbers(const toml::node& node, const KeyPlace& at, const NumberRange& range);
-[[nodiscard]] std::vector<std::int64_t> read_integers(const toml::node& node, const KeyPlace& at, const NumberRange& range);
+[[nodiscard]] std::vector<std::int64_t> read_integers(const toml::node& node, const KeyPlace& at,
+                                                      const NumberRange& range);
 /// A list that rises strictly.
 [[nodiscard]] std::vector<double> read_rising(const toml::node& node, const KeyPlace& at, const NumberRange& range);
 
 template <typename Target, typename Member>
-Key<Target> number_key(std::string name, std::string unit, std::string fallback, NumberRange range, std::string sentence, Member member) {
-  return {std::move(name), std::move(unit), std::move(fallback), range.text(), std::move(sentence),
-          [member, range](Target& target, const toml::node& node, const KeyPlace& at) { std::invoke(member, target) = read_number(node, at, range); }};
+Key<Target> number_key(std::string name, std::string unit, std::string fallback, NumberRange range,
+                       std::string sentence, Member member) {
+  return {std::move(name),
+          std::move(unit),
+          std::move(fallback),
+          range.text(),
+          std::move(sentence),
+          [member, range](Target& target, const toml::node& node, const KeyPlace& at) {
+            std::invoke(member, target) = read_number(node, at, range);
+          }};
 }
 
 template <typename Target, typename Member>
-Key<Target> integer_key(std::string name, std::string unit, std::string fallback, NumberRange range, std::string sentence, Member member) {
-  return {std::move(name), std::move(unit), std::move(fallback), "whole, " + range.text(), std::move(sentence),
+Key<Target> integer_key(std::string name, std::string unit, std::string fallback, NumberRange range,
+                        std::string sentence, Member member) {
+  return {std::move(name),
+          std::move(unit),
+          std::move(fallback),
+          "whole, " + range.text(),
+          std::move(sentence),
           [member, range](Target& target, const toml::node& node, const KeyPlace& at) {
             auto& place = std::invoke(member, target);
             using Value = std::decay_t<decltype(place)>;

@@ -22,9 +22,11 @@ std::string read_file(const fs::path& path) {
   const auto status = fs::status(path, error);
   if (!fs::exists(status)) throw InputError(file, "no such file; expected a scenario (TOML)");
   if (!fs::is_regular_file(status)) throw InputError(file, "is not a file; expected a scenario (TOML)");
-  if (fs::file_size(path, error) > largest_file) throw InputError(file, "is larger than 1 MiB; expected a scenario (TOML)");
+  if (fs::file_size(path, error) > largest_file)
+    throw InputError(file, "is larger than 1 MiB; expected a scenario (TOML)");
   std::ifstream stream(path, std::ios::binary);
-  if (!stream) throw InputError(file, fmt::format("cannot be read ({}); expected a scenario (TOML)", std::strerror(errno)));
+  if (!stream)
+    throw InputError(file, fmt::format("cannot be read ({}); expected a scenario (TOML)", std::strerror(errno)));
   std::ostringstream text;
   text << stream.rdbuf();
   return text.str();
@@ -38,7 +40,8 @@ toml::table parse(const std::string& text, const std::string& file) {
     for (char& c : what) {
       if (static_cast<unsigned char>(c) < 0x20) c = ' ';
     }
-    throw InputError(fmt::format("{}:{}:{}", file, error.source().begin.line, error.source().begin.column), "not valid TOML: " + what);
+    throw InputError(fmt::format("{}:{}:{}", file, error.source().begin.line, error.source().begin.column),
+                     "not valid TOML: " + what);
   }
 }
 
@@ -49,12 +52,13 @@ void refuse_unknown_tables(const ReadingContext& context, const toml::table& roo
     if (std::find(known.begin(), known.end(), name) != known.end()) continue;
     const KeyPlace at = context.at(name, *node);
     const bool is_table = node->is_table() || node->is_array_of_tables();
-    complain({at.place, ""}, fmt::format("unknown {} `{}`; nearest table: [{}]", is_table ? "table" : "key", name, nearest_word(name, known)));
+    complain({at.place, ""}, fmt::format("unknown {} `{}`; nearest table: [{}]", is_table ? "table" : "key", name,
+                                         nearest_word(name, known)));
   }
 }
 
-void read_entry(const ReadingContext& context, const Table& table, const toml::table& toml, const std::string& full_name,
-                Scenario& scenario) {
+void read_entry(const ReadingContext& context, const Table& table, const toml::table& toml,
+                const std::string& full_name, Scenario& scenario) {
   table.read(context, toml, full_name, scenario);
 }
 
@@ -69,7 +73,8 @@ void read_list(const ReadingContext& context, const Table& table, const toml::no
     const auto name = toml["name"].value<std::string>().value_or("?");
     const std::string full_name = table.name + "." + name;
     read_entry(context, table, toml, full_name, scenario);
-    if (!names.insert(name).second) complain(context.at(full_name, toml), "has the name of an earlier entry, expected each name once");
+    if (!names.insert(name).second)
+      complain(context.at(full_name, toml), "has the name of an earlier entry, expected each name once");
   }
 }
 
@@ -84,7 +89,9 @@ void read_named(const ReadingContext& context, const Table& table, const toml::n
 
 void read_table(const ReadingContext& context, const Table& table, const toml::node& node, Scenario& scenario) {
   switch (table.shape) {
-    case TableShape::Single: read_entry(context, table, as_table(node, context.at(table.name, node)), table.name, scenario); break;
+    case TableShape::Single:
+      read_entry(context, table, as_table(node, context.at(table.name, node)), table.name, scenario);
+      break;
     case TableShape::List: read_list(context, table, node, scenario); break;
     case TableShape::Named: read_named(context, table, node, scenario); break;
   }
@@ -108,13 +115,6 @@ void check_whole(const std::string& file, const Scenario& scenario) {
 
 }  // namespace
 
-const std::vector<Table>& all_tables() {
-  static const std::vector<Table> tables{scenario_table(), site_table(), digitizer_table(), calibration_table(), tank_table(),
-                                         muons_table(), frontend_table(), station_table(), trigger_table(), signal_table(),
-                                         qualify_table(), rate_table(), traces_table(), requirements_table()};
-  return tables;
-}
-
 Scenario load_scenario(const fs::path& path, const std::vector<Override>& overrides) {
   const std::string file = path.string();
   const std::string text = read_file(path);
@@ -126,11 +126,13 @@ Scenario load_scenario(const fs::path& path, const std::vector<Override>& overri
   Scenario scenario;
   scenario.path = path;
   scenario.digest = digest_of(text, overrides);
-  if (!root.contains("digitizer")) throw InputError(file, "has no [digitizer]; expected it, with channels, sample_rate_mhz and bits");
+  if (!root.contains("digitizer"))
+    throw InputError(file, "has no [digitizer]; expected it, with channels, sample_rate_mhz and bits");
   for (const Table& table : all_tables()) {
     const toml::node* node = root.get(table.name);
     if (node != nullptr) read_table(context, table, *node, scenario);
-    if (table.check) table.check(node != nullptr ? context.at(table.name, *node) : KeyPlace{file, table.name}, scenario);
+    if (table.check)
+      table.check(node != nullptr ? context.at(table.name, *node) : KeyPlace{file, table.name}, scenario);
   }
   check_whole(file, scenario);
   return scenario;

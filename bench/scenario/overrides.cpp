@@ -26,7 +26,8 @@ const Table& find_table(const Override& override, const std::vector<Table>& tabl
   complain(place_of(override), fmt::format("unknown table `{}`; nearest: {}", name, nearest_word(name, known)));
 }
 
-toml::table& entry_named(const Override& override, toml::table& root, const std::string& list, const std::string& name) {
+toml::table& entry_named(const Override& override, toml::table& root, const std::string& list,
+                         const std::string& name) {
   std::vector<std::string> known;
   toml::array* entries = root[list].as_array();
   for (std::size_t i = 0; entries != nullptr && i < entries->size(); ++i) {
@@ -36,8 +37,9 @@ toml::table& entry_named(const Override& override, toml::table& root, const std:
     if (own == name) return *entry;
     if (own) known.push_back(*own);
   }
-  complain(place_of(override), known.empty() ? fmt::format("the scenario has no [[{}]]", list)
-                                             : fmt::format("no [[{}]] is named `{}`; nearest: {}", list, name, nearest_word(name, known)));
+  complain(place_of(override),
+           known.empty() ? fmt::format("the scenario has no [[{}]]", list)
+                         : fmt::format("no [[{}]] is named `{}`; nearest: {}", list, name, nearest_word(name, known)));
 }
 
 toml::table& table_at(const Override& override, toml::table& parent, const std::string& name) {
@@ -51,14 +53,16 @@ toml::table& table_at(const Override& override, toml::table& parent, const std::
 void set_value(const Override& override, toml::table& table, const std::string& key) {
   try {
     const toml::table parsed = toml::parse("v = " + override.value);
-    if (parsed.size() != 1 || !parsed.contains("v")) complain(place_of(override), fmt::format("got {}, expected one TOML value", override.value.substr(0, 60)));
+    if (parsed.size() != 1 || !parsed.contains("v"))
+      complain(place_of(override), fmt::format("got {}, expected one TOML value", override.value.substr(0, 60)));
     table.insert_or_assign(key, *parsed.get("v"));
   } catch (const toml::parse_error&) {
     std::string shown = override.value.substr(0, 60);
     for (char& c : shown) {
       if (static_cast<unsigned char>(c) < 0x20) c = ' ';
     }
-    complain(place_of(override), fmt::format("got {}, expected a TOML value: 3, 0.5, true, \"text\" (with its quotes) or [1, 2]", shown));
+    complain(place_of(override),
+             fmt::format("got {}, expected a TOML value: 3, 0.5, true, \"text\" (with its quotes) or [1, 2]", shown));
   }
 }
 
@@ -74,7 +78,9 @@ std::string apply_override(const Override& override, const std::vector<Table>& t
   switch (table.shape) {
     case TableShape::Single: set_value(override, table_at(override, root, parts[0]), parts[1]); break;
     case TableShape::List: set_value(override, entry_named(override, root, parts[0], parts[1]), parts[2]); break;
-    case TableShape::Named: set_value(override, table_at(override, table_at(override, root, parts[0]), parts[1]), parts[2]); break;
+    case TableShape::Named:
+      set_value(override, table_at(override, table_at(override, root, parts[0]), parts[1]), parts[2]);
+      break;
   }
   return override.key;
 }

@@ -13,9 +13,11 @@ std::vector<std::pair<std::string, const toml::node*>> entries_of(const toml::ta
   for (const auto& [key, node] : table) entries.emplace_back(std::string(key.str()), &node);
   const auto position = [](const toml::node& node) {
     const auto begin = node.source().begin;
-    return begin.line == 0 ? std::pair<std::uint32_t, std::uint32_t>{UINT32_MAX, 0} : std::pair<std::uint32_t, std::uint32_t>{begin.line, begin.column};
+    return begin.line == 0 ? std::pair<std::uint32_t, std::uint32_t>{UINT32_MAX, 0}
+                           : std::pair<std::uint32_t, std::uint32_t>{begin.line, begin.column};
   };
-  std::stable_sort(entries.begin(), entries.end(), [&](const auto& a, const auto& b) { return position(*a.second) < position(*b.second); });
+  std::stable_sort(entries.begin(), entries.end(),
+                   [&](const auto& a, const auto& b) { return position(*a.second) < position(*b.second); });
   return entries;
 }
 

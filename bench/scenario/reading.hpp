@@ -16,7 +16,7 @@ namespace cistern {
 /// Knows which values came from --set, so that a message can say so.
 struct ReadingContext {
   std::string file;
-  std::set<std::string> overridden;   ///< full keys, entries by name
+  std::set<std::string> overridden;  ///< full keys, entries by name
 
   [[nodiscard]] KeyPlace at(const std::string& key, const toml::node& node) const;
 };

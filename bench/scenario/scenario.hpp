@@ -41,11 +41,11 @@ struct CalibrationConfig {
 /// Per-channel lists have one entry (for all) or one per channel.
 struct TriggerPlan {
   std::string name;
-  std::string place;                                  ///< "FILE:LINE" of the entry, for messages
+  std::string place;  ///< "FILE:LINE" of the entry, for messages
   TriggerRole role{TriggerRole::Both};
   TriggerKind kind{TriggerKind::Threshold};
   std::optional<std::vector<std::int32_t>> level_counts;
-  std::optional<std::vector<double>> level_vem;       ///< pulse height
+  std::optional<std::vector<double>> level_vem;  ///< pulse height
   std::optional<std::int32_t> window_samples;
   std::optional<double> window_ns;
   std::optional<std::int32_t> min_samples_over;
@@ -55,13 +55,13 @@ struct TriggerPlan {
   std::optional<std::vector<std::int64_t>> sum_counts;
   std::optional<std::vector<double>> sum_vem;
   std::int32_t majority{1};
-  std::vector<std::int32_t> channels;                 ///< the mask; empty: all
+  std::vector<std::int32_t> channels;  ///< the mask; empty: all
   FiringSettings firing;
 };
 
 /// One [[signal]]: test signals placed by `qualify`, every size with every spread.
 struct SignalPlan {
-  std::string name;                                   ///< subject in figure names
+  std::string name;  ///< subject in figure names
   SignalKind kind{SignalKind::Muon};
   std::vector<double> sizes_vem;
   std::vector<double> spreads_ns{0};
@@ -73,9 +73,9 @@ struct QualifyConfig {
   std::int32_t quick_signals_per_point{300};
   double live_time_s{120};
   double quick_live_time_s{12};
-  double block_s{0.1};                                ///< counting blocks of the background rate
-  double match_window_ns{4000};                       ///< onset to first firing
-  double spare_before_ns{3000};                       ///< quiet trace before a test signal
+  double block_s{0.1};           ///< counting blocks of the background rate
+  double match_window_ns{4000};  ///< onset to first firing
+  double spare_before_ns{3000};  ///< quiet trace before a test signal
 };
 
 /// [rate]
@@ -84,14 +84,14 @@ struct RateConfig {
   double quick_live_time_s{6};
   double block_s{0.1};
   std::vector<double> level_factors{0.5, 0.6, 0.7, 0.8, 0.9, 1.0, 1.1, 1.25, 1.4, 1.6, 2.0};  ///< on level or sum
-  std::optional<double> target_rate_hz;               ///< `rate` tells where each trigger reaches it
-  std::vector<std::int32_t> min_samples_over;         ///< scan of time-over-threshold triggers; may be empty
+  std::optional<double> target_rate_hz;        ///< `rate` tells where each trigger reaches it
+  std::vector<std::int32_t> min_samples_over;  ///< scan of time-over-threshold triggers; may be empty
 };
 
 /// [traces]: recorded traces, and what their file does not say itself.
 struct RecordedTracesConfig {
   std::optional<std::filesystem::path> file;
-  std::optional<std::string> selection;               ///< never overrides `triggered_by`
+  std::optional<std::string> selection;  ///< never overrides `triggered_by`
   std::optional<double> live_time_s;
   std::optional<bool> contiguous;
 };
@@ -101,30 +101,30 @@ enum class BoundKind { AtMost, AtLeast };
 /// One [requirements.NAME]
 struct Requirement {
   std::string name;
-  std::string place;                                  ///< "FILE:LINE"
+  std::string place;  ///< "FILE:LINE"
   std::string figure;
   BoundKind kind{BoundKind::AtMost};
   double bound{0};
-  double confidence{0.95};                            ///< one-sided
+  double confidence{0.95};  ///< one-sided
 };
 
 struct Scenario {
   std::filesystem::path path;
   ScenarioIdentity identity;
   SiteConfig site;
-  DigitizerConfig digitizer;                          ///< baseline_counts may be empty: then the trace file says
+  DigitizerConfig digitizer;  ///< baseline_counts may be empty: then the trace file says
   CalibrationConfig calibration;
-  std::vector<TriggerPlan> triggers;                  ///< in file order
-  bool has_tank{false};                               ///< [tank] is there: synthetic traces can be made
+  std::vector<TriggerPlan> triggers;  ///< in file order
+  bool has_tank{false};               ///< [tank] is there: synthetic traces can be made
   GeneratorConfig generator;
-  bool has_station{false};                            ///< [station] is there: firings can find it busy
-  CaptureConfig capture;                              ///< [station]
+  bool has_station{false};  ///< [station] is there: firings can find it busy
+  CaptureConfig capture;    ///< [station]
   std::vector<SignalPlan> signals;
   QualifyConfig qualify;
   RateConfig rate;
   RecordedTracesConfig traces;
-  std::vector<Requirement> requirements;              ///< in file order
-  std::string digest;                                 ///< of the text and the overrides, hex: identifies a run
+  std::vector<Requirement> requirements;  ///< in file order
+  std::string digest;                     ///< of the text and the overrides, hex: identifies a run
 };
 
 /// One --set KEY=VALUE: a dotted key (entries by name) and a TOML value.

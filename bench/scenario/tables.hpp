@@ -12,9 +12,9 @@
 namespace cistern {
 
 enum class TableShape {
-  Single,   ///< [name]
-  List,     ///< [[name]], each with a `name` of its own
-  Named,    ///< [name.ENTRY]
+  Single,  ///< [name]
+  List,    ///< [[name]], each with a `name` of its own
+  Named,   ///< [name.ENTRY]
 };
 
 struct Table {
@@ -45,6 +45,9 @@ struct Table {
 
 /// All of them, in the order in which they are read: a table may rely on those before it.
 [[nodiscard]] const std::vector<Table>& all_tables();
+
+/// Complains when the blocks of a live time are longer than the shortest live time.
+void check_blocks(const KeyPlace& at, double block_s, double live_s, double quick_s);
 
 /// A Single table whose keys fill `part(scenario)`.
 template <typename Target, typename Part>
