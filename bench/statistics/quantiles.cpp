@@ -4,7 +4,6 @@
 #include <boost/math/special_functions/beta.hpp>
 #include <cmath>
 #include <limits>
-#include <ranges>
 
 #include "traces/base/errors.hpp"
 
@@ -27,9 +26,17 @@ double probability_below(std::size_t count, std::size_t trials, double probabili
 /// The first of the ranks 1 to `ranks` at which `holds` is true, `ranks` + 1 if none; `holds` turns true once.
 template <typename Holds>
 std::size_t first_rank(std::size_t ranks, Holds holds) {
-  const auto all = std::views::iota(std::size_t{1}, ranks + 1);
-  const auto first = std::ranges::partition_point(all, [&](std::size_t rank) { return !holds(rank); });
-  return static_cast<std::size_t>(first - all.begin()) + 1;
+  std::size_t first = 1;
+  std::size_t after = ranks + 1;
+  while (first < after) {
+    const std::size_t middle = first + (after - first) / 2;
+    if (holds(middle)) {
+      after = middle;
+    } else {
+      first = middle + 1;
+    }
+  }
+  return first;
 }
 
 }  // namespace
