@@ -4,12 +4,9 @@ namespace cistern {
 
 std::string_view text_of(MessageError error) {
   switch (error) {
-    case MessageError::Malformed:
-      return "the bytes are not a whole message";
-    case MessageError::MissingField:
-      return "a required field is missing";
-    case MessageError::OutOfRange:
-      return "a field has an impossible value";
+    case MessageError::Malformed: return "the bytes are not a whole message";
+    case MessageError::MissingField: return "a required field is missing";
+    case MessageError::OutOfRange: return "a field has an impossible value";
   }
   return "unknown";
 }

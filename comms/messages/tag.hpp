@@ -13,13 +13,14 @@
 namespace cistern {
 
 struct Tag {
-  std::uint32_t station_number{0};              ///< counted from 1
-  std::uint32_t trigger_index{0};               ///< place in the station's list of triggers, from 0, below 65,535
-  std::uint64_t capture_number{0};              ///< counted from 1 at each station; names the capture in a readout request
-  GpsNanoseconds firing_time_ns{0};             ///< sampling instant of the firing's sample, >= 0
-  std::optional<GpsNanoseconds> onset_time_ns;  ///< at most 4.2 s before the firing; empty where the trigger cannot tell
-  float time_error_ns{0};                       ///< one standard deviation of the clock, finite, >= 0
-  bool start_unknown{false};                    ///< the trigger's window reached before the first sample
+  std::uint32_t station_number{0};   ///< counted from 1
+  std::uint32_t trigger_index{0};    ///< place in the station's list of triggers, from 0, below 65,535
+  std::uint64_t capture_number{0};   ///< counted from 1 at each station; names the capture in a readout request
+  GpsNanoseconds firing_time_ns{0};  ///< sampling instant of the firing's sample, >= 0
+  std::optional<GpsNanoseconds>
+      onset_time_ns;          ///< at most 4.2 s before the firing; empty where the trigger cannot tell
+  float time_error_ns{0};     ///< one standard deviation of the clock, finite, >= 0
+  bool start_unknown{false};  ///< the trigger's window reached before the first sample
   bool operator==(const Tag&) const = default;
 };
 

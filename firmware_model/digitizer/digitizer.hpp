@@ -11,7 +11,7 @@
 namespace cistern {
 
 struct DigitizerConfig {
-  std::int32_t channels{4};                   ///< 1 to 16
+  std::int32_t channels{4};  ///< 1 to 16
   double sample_rate_mhz{100};
   std::int32_t bits{12};                      ///< 4 to 15; codes are 0 .. 2^bits - 1
   std::vector<std::int32_t> baseline_counts;  ///< pedestal per channel, the code of no signal

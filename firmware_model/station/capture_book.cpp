@@ -73,8 +73,7 @@ CaptureDecision CaptureBook::take(std::int64_t firing_sample) {
 
 std::optional<CaptureDecision> CaptureBook::join_open_capture(std::int64_t firing_sample) {
   if (firing_sample >= open_until()) return std::nullopt;
-  const bool extended =
-      config_.overlap == OverlapPolicy::Extend && extend_to(firing_sample + config_.post_samples);
+  const bool extended = config_.overlap == OverlapPolicy::Extend && extend_to(firing_sample + config_.post_samples);
   return CaptureDecision{extended ? CaptureOutcome::Extended : CaptureOutcome::Merged, captures_.size() - 1};
 }
 

@@ -31,7 +31,7 @@ struct CaptureConfig {
   std::int32_t buffers{4};              ///< places to hold a capture, >= 1
   std::int64_t copy_out_samples{2000};  ///< clocks to copy pre + post samples out, >= 0; more take longer in proportion
   OverlapPolicy overlap{OverlapPolicy::Ignore};
-  std::int64_t max_samples{2400};       ///< length of a buffer, >= pre + post: the limit of Extend
+  std::int64_t max_samples{2400};  ///< length of a buffer, >= pre + post: the limit of Extend
 };
 
 /// One line that names the key and what was expected of it; empty when the configuration is valid.
@@ -51,12 +51,12 @@ inline constexpr std::size_t capture_outcome_count = 4;
 
 /// The stretch [first_sample, end_sample) around a firing, and the buffer that holds it.
 struct Capture {
-  std::int64_t firing_sample{0};   ///< of the firing that opened it
-  std::int64_t first_sample{0};    ///< firing - pre, at least 0
-  std::int64_t end_sample{0};      ///< firing + post (later when extended): the first sample not in it
-  std::int64_t copied_from{0};     ///< the clock at which copy-out begins
-  std::int64_t free_at{0};         ///< a firing at this sample may use the buffer again
-  std::int32_t buffer{0};          ///< 0 to buffers - 1
+  std::int64_t firing_sample{0};  ///< of the firing that opened it
+  std::int64_t first_sample{0};   ///< firing - pre, at least 0
+  std::int64_t end_sample{0};     ///< firing + post (later when extended): the first sample not in it
+  std::int64_t copied_from{0};    ///< the clock at which copy-out begins
+  std::int64_t free_at{0};        ///< a firing at this sample may use the buffer again
+  std::int32_t buffer{0};         ///< 0 to buffers - 1
   bool operator==(const Capture&) const = default;
 };
 

@@ -17,7 +17,7 @@ class SampleRing {
   /// Stores the next sample, one code per channel; the first one is sample 0.
   void store(std::span<const std::int16_t> codes);
 
-  [[nodiscard]] std::int64_t stored() const noexcept { return stored_; }                    ///< since the start
+  [[nodiscard]] std::int64_t stored() const noexcept { return stored_; }  ///< since the start
   [[nodiscard]] std::int64_t oldest() const noexcept { return stored_ > length_ ? stored_ - length_ : 0; }
 
   /// Writes the samples [first, stored()) to the beginning of every channel of `into`, which has room for them.

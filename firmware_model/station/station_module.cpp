@@ -11,9 +11,7 @@ namespace {
 
 constexpr std::uint64_t ticks_per_ns = 1000;  // at the kernel's resolution of 1 ps
 
-sc_core::sc_time half(const sc_core::sc_time& duration) {
-  return sc_core::sc_time::from_value(duration.value() / 2);
-}
+sc_core::sc_time half(const sc_core::sc_time& duration) { return sc_core::sc_time::from_value(duration.value() / 2); }
 
 std::string code_out_of_range(std::int16_t code, std::int16_t largest) {
   return "code 0 to " + std::to_string(largest) + " expected, found " + std::to_string(code);
@@ -119,8 +117,7 @@ StationFiring CaptureModule::firing_of(std::size_t trigger, const Firing& firing
   result.trigger = trigger;
   result.firing = firing;
   result.time_ns = config_.start_ns + sample_offset_ns(firing.sample, config_.digitizer.sample_rate_mhz);
-  result.decided_ns =
-      config_.start_ns + static_cast<std::int64_t>(sc_core::sc_time_stamp().value() / ticks_per_ns);
+  result.decided_ns = config_.start_ns + static_cast<std::int64_t>(sc_core::sc_time_stamp().value() / ticks_per_ns);
   return result;
 }
 

@@ -32,8 +32,8 @@ class DigitizerModule : public sc_core::sc_module {
  public:
   sc_core::sc_in<bool> clock{"clock"};
   sc_core::sc_vector<sc_core::sc_out<std::int16_t>> codes;
-  sc_core::sc_out<bool> valid{"valid"};   ///< a sample is on the codes
-  sc_core::sc_out<bool> reset{"reset"};   ///< no sample has come yet
+  sc_core::sc_out<bool> valid{"valid"};  ///< a sample is on the codes
+  sc_core::sc_out<bool> reset{"reset"};  ///< no sample has come yet
 
   /// \param view  borrowed for the simulation
   DigitizerModule(sc_core::sc_module_name name, const DigitizerConfig& config, CodesView view);
@@ -80,8 +80,8 @@ class CaptureModule : public sc_core::sc_module {
 /// The modules above and the wires between them.
 class StationModule : public sc_core::sc_module {
  public:
-  StationModule(sc_core::sc_module_name name, const StationConfig& config,
-                const std::vector<TriggerSettings>& triggers, CodesView view);
+  StationModule(sc_core::sc_module_name name, const StationConfig& config, const std::vector<TriggerSettings>& triggers,
+                CodesView view);
 
   [[nodiscard]] std::exception_ptr failure() const { return digitizer_.failure(); }
   [[nodiscard]] StationRun finish() { return capture_.finish(); }

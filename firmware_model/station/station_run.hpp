@@ -27,10 +27,10 @@ struct StationConfig {
 
 /// A firing of one trigger and what the station made of it.
 struct StationFiring {
-  std::size_t trigger{0};              ///< place in the list of triggers
-  Firing firing;                       ///< status Busy: passed by the trigger, lost for want of a buffer
-  GpsNanoseconds time_ns{0};           ///< sampling instant of the firing's sample
-  GpsNanoseconds decided_ns{0};        ///< clock at which the capture buffers heard of it
+  std::size_t trigger{0};                 ///< place in the list of triggers
+  Firing firing;                          ///< status Busy: passed by the trigger, lost for want of a buffer
+  GpsNanoseconds time_ns{0};              ///< sampling instant of the firing's sample
+  GpsNanoseconds decided_ns{0};           ///< clock at which the capture buffers heard of it
   std::optional<CaptureOutcome> outcome;  ///< empty when the trigger did not pass it
   std::optional<std::size_t> capture;     ///< place in StationRun::captures of the one that holds it
 };
@@ -39,7 +39,7 @@ struct StationRun {
   std::vector<StationFiring> firings;    ///< by sample, then trigger
   std::vector<StationCapture> captures;  ///< in order of firing
   std::int64_t samples{0};
-  std::int64_t busy_samples{0};          ///< samples at which every buffer was taken
+  std::int64_t busy_samples{0};  ///< samples at which every buffer was taken
 };
 
 /// Clocks from the sampling instant to the capture buffers: the digitizer's pipeline, its output register, the

@@ -28,8 +28,8 @@ class TriggerModule : public sc_core::sc_module {
   sc_core::sc_in<bool> clock{"clock"};
   sc_core::sc_in<bool> reset{"reset"};  ///< active high, synchronous; the first edge without it takes sample 0
   sc_core::sc_vector<sc_core::sc_in<std::int16_t>> codes;
-  sc_core::sc_out<bool> fire{"fire"};               ///< a firing that passed, one clock long, one register late
-  sc_core::sc_out<FiringReport> report{"report"};   ///< any firing, stopped ones too
+  sc_core::sc_out<bool> fire{"fire"};              ///< a firing that passed, one clock long, one register late
+  sc_core::sc_out<FiringReport> report{"report"};  ///< any firing, stopped ones too
 
   /// Bug if the settings are not valid.
   TriggerModule(sc_core::sc_module_name name, const TriggerSettings& settings);

@@ -101,8 +101,8 @@ class Player : public sc_core::sc_module {
     sensitive << clock.neg();
   }
 
-  std::vector<Firings> firings;        ///< per trace
-  std::int64_t disagreeing_wires{0};   ///< clocks at which `fire` was not what the report says
+  std::vector<Firings> firings;       ///< per trace
+  std::int64_t disagreeing_wires{0};  ///< clocks at which `fire` was not what the report says
 
  private:
   /// Halfway between two rising edges: hears about the sample put on the wires before, then puts the next.

@@ -9,30 +9,13 @@
 #include "firmware_model/station/station_run.hpp"
 #include "firmware_model/trigger/kernel.hpp"
 #include "tests/cosim/own_process.hpp"
+#include "tests/cosim/station_stimuli.hpp"
 #include "traces/base/random.hpp"
 
 namespace cistern {
 namespace {
 
 constexpr std::uint64_t seed = 909;
-
-TriggerSettings threshold_trigger(std::int32_t level_counts, std::int32_t majority) {
-  TriggerSettings settings;
-  settings.name = "level_" + std::to_string(level_counts);
-  settings.condition = {.kind = TriggerKind::Threshold, .baseline_counts = {200, 210}, .channel_enabled = {true, true},
-                        .level_counts = {level_counts, level_counts}, .sum_counts = {0, 0}, .majority = majority};
-  return settings;
-}
-
-StationConfig usual_config() {
-  StationConfig config;
-  config.digitizer = {.channels = 2, .sample_rate_mhz = 120, .bits = 12, .baseline_counts = {200, 210},
-                      .gain = {1.0, 1.5}, .latency_samples = 7};
-  config.capture = {.pre_samples = 20, .post_samples = 60, .buffers = 2, .copy_out_samples = 150, .max_samples = 140};
-  config.ring_samples = 21;
-  config.start_ns = 1'400'000'000'000'000'000;
-  return config;
-}
 
 /// Noise, and pulses with a sharp rise at random places.
 Waveform random_waveform(std::size_t samples, double mean_gap_samples, RandomStream& stream) {
@@ -51,17 +34,6 @@ Waveform random_waveform(std::size_t samples, double mean_gap_samples, RandomStr
   return waveform;
 }
 
-/// Codes at the pedestal with one sample of `height` above it in both channels at each of `places`.
-Codes spikes(std::size_t samples, const std::vector<std::size_t>& places) {
-  Codes codes(2, samples);
-  std::fill(codes.channel(0).begin(), codes.channel(0).end(), std::int16_t{200});
-  std::fill(codes.channel(1).begin(), codes.channel(1).end(), std::int16_t{210});
-  for (const std::size_t place : places) {
-    for (std::size_t c = 0; c < 2; ++c) codes.channel(c)[place] = 1000;
-  }
-  return codes;
-}
-
 /// What kernels and book make of the codes: the station without clocks.
 StationRun unclocked(const StationConfig& config, const std::vector<TriggerSettings>& triggers, CodesView codes) {
   StationRun run;
@@ -75,9 +47,8 @@ StationRun unclocked(const StationConfig& config, const std::vector<TriggerSetti
       added.firing = firing;
     }
   }
-  std::stable_sort(run.firings.begin(), run.firings.end(), [](const StationFiring& a, const StationFiring& b) {
-    return a.firing.sample < b.firing.sample;
-  });
+  std::stable_sort(run.firings.begin(), run.firings.end(),
+                   [](const StationFiring& a, const StationFiring& b) { return a.firing.sample < b.firing.sample; });
   CaptureBook book(config.capture);
   for (StationFiring& firing : run.firings) {
     if (firing.firing.status != FiringStatus::Passed) continue;
@@ -212,70 +183,6 @@ TEST(StationShell, runs_without_triggers_and_without_samples) {
     const StationRun run = run_station(usual_config(), {}, Codes(2, 0).view());
     EXPECT_EQ(run.samples, 0);
     EXPECT_TRUE(run.firings.empty());
-  });
-}
-
-/// The message of the InputError, or that there was none.
-std::string refusal(const StationConfig& config, CodesView codes) {
-  try {
-    static_cast<void>(run_station(config, {threshold_trigger(100, 2)}, codes));
-  } catch (const InputError& error) {
-    return error.what();
-  }
-  return "accepted";
-}
-
-TEST(StationShell, throws_again_what_a_process_threw) {
-  in_own_process([] {
-    Codes codes = spikes(500, {});
-    codes.channel(1)[77] = 4096;
-    EXPECT_EQ(refusal(usual_config(), codes.view()),
-              "sample 77 of channel 1: code 0 to 4095 expected, found 4096");
-  });
-  in_own_process([] {
-    Codes codes = spikes(500, {});
-    codes.channel(0)[0] = -1;
-    EXPECT_EQ(refusal(usual_config(), codes.view()), "sample 0 of channel 0: code 0 to 4095 expected, found -1");
-  });
-}
-
-TEST(StationShell, runs_at_most_100_days) {
-  in_own_process([] {
-    StationConfig config = usual_config();
-    config.digitizer.latency_samples = 0;
-    config.digitizer.sample_rate_mhz = 1e-12;  // a sample in 1e6 s; the last edge is that of sample n + 1
-    EXPECT_EQ(refusal(config, spikes(8, {}).view()),
-              "station: a run of at most 100 days expected, this one lasts 115.740741 days");
-    EXPECT_EQ(refusal(config, spikes(7, {}).view()), "accepted");
-  });
-}
-
-TEST(StationShell, refuses_a_configuration_out_of_range) {
-  struct Row {
-    const char* expected;
-    void (*spoil)(StationConfig&);
-  };
-  const Row rows[] = {
-      {"station: buffers: at least 1 expected", [](StationConfig& c) { c.capture.buffers = 0; }},
-      {"station: ring_samples: at least pre_samples + 1 = 21 expected", [](StationConfig& c) { c.ring_samples = 20; }},
-      {"digitizer: sample_rate_mhz: above 0 and at most 1000 expected",
-       [](StationConfig& c) { c.digitizer.sample_rate_mhz = 1001; }},
-      {"digitizer: sample_rate_mhz: above 0 and at most 1000 expected",
-       [](StationConfig& c) { c.digitizer.sample_rate_mhz = 0; }},
-      {"digitizer: latency_samples: at least 0 expected", [](StationConfig& c) { c.digitizer.latency_samples = -1; }},
-  };
-  for (const Row& row : rows) {
-    StationConfig config = usual_config();
-    row.spoil(config);
-    EXPECT_EQ(refusal(config, spikes(10, {}).view()), row.expected);
-  }
-}
-
-TEST(StationShell, refuses_a_second_run_in_one_process) {
-  in_own_process([] {
-    const Codes codes = spikes(10, {});
-    EXPECT_EQ(refusal(usual_config(), codes.view()), "accepted");
-    EXPECT_DEATH(refusal(usual_config(), codes.view()), "claimed");
   });
 }
 

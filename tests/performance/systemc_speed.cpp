@@ -14,9 +14,14 @@ constexpr double period_ns = 10;
 TriggerSettings usual_trigger() {
   TriggerSettings settings;
   settings.name = "usual";
-  settings.condition = {.kind = TriggerKind::TimeOverThreshold, .baseline_counts = {200, 200, 200, 200},
-                        .channel_enabled = {true, true, true, true}, .level_counts = {60, 60, 60, 60},
-                        .window_samples = 150, .min_samples_over = 21, .sum_counts = {0, 0, 0, 0}, .majority = 2};
+  settings.condition = {.kind = TriggerKind::TimeOverThreshold,
+                        .baseline_counts = {200, 200, 200, 200},
+                        .channel_enabled = {true, true, true, true},
+                        .level_counts = {60, 60, 60, 60},
+                        .window_samples = 150,
+                        .min_samples_over = 21,
+                        .sum_counts = {0, 0, 0, 0},
+                        .majority = 2};
   return settings;
 }
 

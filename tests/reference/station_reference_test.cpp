@@ -15,8 +15,7 @@ namespace {
 
 constexpr std::uint64_t seed = 1917;
 
-void expect_within_four_errors(const std::string& what, const char* source, double expected, double got,
-                               double error) {
+void expect_within_four_errors(const std::string& what, const char* source, double expected, double got, double error) {
   fmt::print("{}: expected {:.7g} ({}), got {:.7g}, tolerance {:.2g}\n", what, expected, source, got, 4 * error);
   EXPECT_NEAR(got, expected, 4 * error) << what << ", seed " << seed;
 }
@@ -32,9 +31,9 @@ void take_poisson(CaptureBook& book, double mean_gap_samples, std::int64_t begin
 }
 
 struct LossMeasurement {
-  double lost;            ///< part of the firings
-  double lost_error;      ///< standard error, from the spread of independent blocks
-  double busy;            ///< part of the time
+  double lost;        ///< part of the firings
+  double lost_error;  ///< standard error, from the spread of independent blocks
+  double busy;        ///< part of the time
   double busy_error;
 };
 
@@ -44,9 +43,7 @@ struct Moments {
   int count{0};
   void add(double value) { sum += value, squares += value * value, ++count; }
   [[nodiscard]] double mean() const { return sum / count; }
-  [[nodiscard]] double error() const {
-    return std::sqrt((squares / count - mean() * mean()) / (count - 1));
-  }
+  [[nodiscard]] double error() const { return std::sqrt((squares / count - mean() * mean()) / (count - 1)); }
 };
 
 /// Losses come in bursts, so their error is taken from the spread of blocks. Each block starts empty and runs for
@@ -83,8 +80,11 @@ TEST(StationReference, with_one_buffer_has_the_non_paralysable_dead_time) {
     // Samples so short that two firings in one are rarer than one in a million.
     const double sample_rate_hz = 1e6 * row.rate_hz;
     const auto dead_samples = static_cast<std::int64_t>(std::llround(row.dead_time_us * 1e-6 * sample_rate_hz));
-    const CaptureConfig config{.pre_samples = 0, .post_samples = dead_samples / 4, .buffers = 1,
-                               .copy_out_samples = dead_samples - dead_samples / 4, .max_samples = dead_samples};
+    const CaptureConfig config{.pre_samples = 0,
+                               .post_samples = dead_samples / 4,
+                               .buffers = 1,
+                               .copy_out_samples = dead_samples - dead_samples / 4,
+                               .max_samples = dead_samples};
     constexpr double live_firings = 1e6;
     const auto end = static_cast<std::int64_t>(live_firings / row.rate_hz * sample_rate_hz);
     CaptureBook book(config);
@@ -107,13 +107,16 @@ TEST(StationReference, with_many_buffers_loses_what_Erlang_says) {
     double offered_erlang;
   };
   // Offered traffic for a loss of 1 %.
-  const Row rows[] = {{1, 0.010101}, {2, 0.152593}, {5, 1.360787}, {10, 4.461177}, {15, 8.108}, {20, 12.030615},
-                      {50, 37.901398}, {100, 84.064159}};
+  const Row rows[] = {{1, 0.010101}, {2, 0.152593},   {5, 1.360787},   {10, 4.461177},
+                      {15, 8.108},   {20, 12.030615}, {50, 37.901398}, {100, 84.064159}};
   std::uint64_t case_number = 1;
   for (const Row& row : rows) {
     constexpr std::int64_t hold_samples = 1'000'000'000;
-    const CaptureConfig config{.pre_samples = 0, .post_samples = hold_samples, .buffers = row.buffers,
-                               .copy_out_samples = 0, .overlap = OverlapPolicy::NewBuffer,
+    const CaptureConfig config{.pre_samples = 0,
+                               .post_samples = hold_samples,
+                               .buffers = row.buffers,
+                               .copy_out_samples = 0,
+                               .overlap = OverlapPolicy::NewBuffer,
                                .max_samples = hold_samples};
     const double mean_gap_samples = static_cast<double>(hold_samples) / row.offered_erlang;
     const LossMeasurement got = measure_loss(config, mean_gap_samples, 4 * hold_samples, case_number++);
@@ -134,8 +137,11 @@ TEST(StationReference, with_one_bus_loses_like_a_queue_of_constant_service) {
   std::uint64_t case_number = 100;
   for (const Row& row : rows) {
     constexpr std::int64_t copy_out_samples = 100'000'000;
-    const CaptureConfig config{.pre_samples = 0, .post_samples = 1, .buffers = row.buffers,
-                               .copy_out_samples = copy_out_samples, .overlap = OverlapPolicy::NewBuffer,
+    const CaptureConfig config{.pre_samples = 0,
+                               .post_samples = 1,
+                               .buffers = row.buffers,
+                               .copy_out_samples = copy_out_samples,
+                               .overlap = OverlapPolicy::NewBuffer,
                                .max_samples = 1};
     const double mean_gap_samples = static_cast<double>(copy_out_samples) / row.load;
     const LossMeasurement got = measure_loss(config, mean_gap_samples, 200 * copy_out_samples, case_number++);

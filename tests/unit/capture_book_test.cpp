@@ -9,7 +9,11 @@ namespace {
 
 /// Two buffers, captures of 2 + 10 samples, 20 clocks to copy one out.
 CaptureConfig small(OverlapPolicy overlap) {
-  return {.pre_samples = 2, .post_samples = 10, .buffers = 2, .copy_out_samples = 20, .overlap = overlap,
+  return {.pre_samples = 2,
+          .post_samples = 10,
+          .buffers = 2,
+          .copy_out_samples = 20,
+          .overlap = overlap,
           .max_samples = 24};
 }
 
@@ -33,8 +37,12 @@ constexpr auto NoFreeBuffer = CaptureOutcome::NoFreeBuffer;
 TEST(CaptureBook, captures_from_pre_samples_before_to_post_samples_after_the_firing) {
   CaptureBook book(small(OverlapPolicy::Ignore));
   EXPECT_EQ(book.take(100), (CaptureDecision{Captured, 0}));
-  EXPECT_EQ(book.captures()[0], (Capture{.firing_sample = 100, .first_sample = 98, .end_sample = 110,
-                                         .copied_from = 110, .free_at = 130, .buffer = 0}));
+  EXPECT_EQ(book.captures()[0], (Capture{.firing_sample = 100,
+                                         .first_sample = 98,
+                                         .end_sample = 110,
+                                         .copied_from = 110,
+                                         .free_at = 130,
+                                         .buffer = 0}));
 }
 
 TEST(CaptureBook, starts_no_capture_before_sample_0) {
@@ -61,7 +69,9 @@ TEST(CaptureBook, decides_what_a_firing_inside_or_after_a_capture_does) {
       {"new buffer: inside", OverlapPolicy::NewBuffer, {100, 101}, {Captured, Captured}},
       {"new buffer: third inside", OverlapPolicy::NewBuffer, {100, 101, 102}, {Captured, Captured, NoFreeBuffer}},
       {"same sample again", OverlapPolicy::NewBuffer, {100, 100, 100}, {Captured, Merged, Merged}},
-      {"same sample as a lost one", OverlapPolicy::NewBuffer, {1, 2, 3, 3},
+      {"same sample as a lost one",
+       OverlapPolicy::NewBuffer,
+       {1, 2, 3, 3},
        {Captured, Captured, NoFreeBuffer, NoFreeBuffer}},
   };
   for (const Row& row : rows) {

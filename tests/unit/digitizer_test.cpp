@@ -34,9 +34,10 @@ struct Row {
 
 TEST(Digitizer, rounds_halves_up) {
   const float below_half = std::nextafter(0.5F, 0.0F);
-  const Row rows[] = {{"zero", 0.0F, 100},           {"just under a half", 0.499F, 100}, {"a half", 0.5F, 101},
-                      {"one and a half", 1.5F, 102}, {"minus a half", -0.5F, 100},       {"under minus a half", -0.501F, 99},
-                      {"minus one", -1.0F, 99},      {"minus one and a half", -1.5F, 99}};
+  const Row rows[] = {{"zero", 0.0F, 100},          {"just under a half", 0.499F, 100},
+                      {"a half", 0.5F, 101},        {"one and a half", 1.5F, 102},
+                      {"minus a half", -0.5F, 100}, {"under minus a half", -0.501F, 99},
+                      {"minus one", -1.0F, 99},     {"minus one and a half", -1.5F, 99}};
   for (const Row& row : rows) EXPECT_EQ(digitized(one_channel(12, 100, 1), {row.value})[0], row.code) << row.name;
   EXPECT_EQ(digitized(one_channel(12, 0, 1), {below_half})[0], 0);
   EXPECT_EQ(digitized(one_channel(12, 0, 1), {0.5F})[0], 1);
@@ -44,11 +45,11 @@ TEST(Digitizer, rounds_halves_up) {
 
 TEST(Digitizer, saturates_at_both_ends) {
   const float infinity = std::numeric_limits<float>::infinity();
-  const Row rows[] = {{"smallest code", -100.0F, 0},   {"below it", -100.6F, 0},
-                      {"far below it", -1e30F, 0},     {"minus infinity", -infinity, 0},
-                      {"largest code", 3995.0F, 4095}, {"one below it", 3994.0F, 4094},
+  const Row rows[] = {{"smallest code", -100.0F, 0},    {"below it", -100.6F, 0},
+                      {"far below it", -1e30F, 0},      {"minus infinity", -infinity, 0},
+                      {"largest code", 3995.0F, 4095},  {"one below it", 3994.0F, 4094},
                       {"just above it", 3995.6F, 4095}, {"far above it", 1e30F, 4095},
-                      {"infinity", infinity, 4095},    {"not a number", std::nanf(""), 0}};
+                      {"infinity", infinity, 4095},     {"not a number", std::nanf(""), 0}};
   for (const Row& row : rows) EXPECT_EQ(digitized(one_channel(12, 100, 1), {row.value})[0], row.code) << row.name;
 }
 

@@ -40,7 +40,8 @@ TEST(Tag, comes_back_as_it_was_encoded) {
   add("earliest onset", [](Tag& tag) { tag.onset_time_ns = tag.firing_time_ns - 4'294'967'295; });
   add("onset before the epoch", [](Tag& tag) { tag.firing_time_ns = 5, tag.onset_time_ns = -20; });
   add("at the epoch", [](Tag& tag) { tag.firing_time_ns = 0, tag.onset_time_ns.reset(); });
-  add("end of time", [](Tag& tag) { tag.firing_time_ns = std::numeric_limits<std::int64_t>::max(), tag.onset_time_ns.reset(); });
+  add("end of time",
+      [](Tag& tag) { tag.firing_time_ns = std::numeric_limits<std::int64_t>::max(), tag.onset_time_ns.reset(); });
   add("perfect clock", [](Tag& tag) { tag.time_error_ns = 0; });
   add("start unknown", [](Tag& tag) { tag.start_unknown = true; });
   add("largest numbers", [](Tag& tag) {
@@ -115,12 +116,16 @@ const std::string station = "\x08\x11";
 const std::string trigger = "\x10\x02";
 const std::string capture = "\x18\x05";
 const std::string onset{"\x28\x64", 2};
-const std::string time_error{"\x35\x00\x00\xf0\x40", 5};                         // 7.5
-const std::string firing_time{"\x79\x00\x01\x00\x00\x00\x00\x00\x00", 9};        // 256 ns
+const std::string time_error{"\x35\x00\x00\xf0\x40", 5};                   // 7.5
+const std::string firing_time{"\x79\x00\x01\x00\x00\x00\x00\x00\x00", 9};  // 256 ns
 
 TEST(Tag, is_read_from_bytes_written_by_hand) {
-  const Tag expected{.station_number = 17, .trigger_index = 1, .capture_number = 5, .firing_time_ns = 256,
-                     .onset_time_ns = 156, .time_error_ns = 7.5F};
+  const Tag expected{.station_number = 17,
+                     .trigger_index = 1,
+                     .capture_number = 5,
+                     .firing_time_ns = 256,
+                     .onset_time_ns = 156,
+                     .time_error_ns = 7.5F};
   EXPECT_EQ(decode_tag(station + trigger + capture + onset + time_error + firing_time), expected);
 }
 
