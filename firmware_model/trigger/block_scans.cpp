@@ -53,11 +53,17 @@ std::int64_t SumCodes(const std::int16_t* codes, std::size_t samples) {
   const std::size_t lanes = hn::Lanes(d);
   auto a = hn::Zero(d);
   auto b = hn::Zero(d);
+  auto c = hn::Zero(d);
+  auto e = hn::Zero(d);
   std::size_t s = 0;
-  for (; s + 2 * lanes <= samples; s += 2 * lanes) {
+  for (; s + 4 * lanes <= samples; s += 4 * lanes) {
     a = hn::Add(a, hn::LoadU(d, codes + s));
     b = hn::Add(b, hn::LoadU(d, codes + s + lanes));
+    c = hn::Add(c, hn::LoadU(d, codes + s + 2 * lanes));
+    e = hn::Add(e, hn::LoadU(d, codes + s + 3 * lanes));
   }
+  a = hn::Add(a, c);
+  b = hn::Add(b, e);
   alignas(128) std::int16_t lane[64];
   hn::StoreU(hn::Add(a, b), d, lane);
   std::uint32_t total = 0;

@@ -15,7 +15,7 @@
 namespace cistern {
 
 /// The kernel works through a block in pieces of at most this many samples.
-inline constexpr std::size_t samples_per_piece = 8'192;
+inline constexpr std::size_t samples_per_piece = 16'384;
 inline constexpr std::size_t words_per_piece = samples_per_piece / 64;
 
 /// Bit b of word w belongs to place 64 w + b of the piece.

@@ -44,7 +44,7 @@ void TriggerKernel::process(const CodesView& block, std::vector<Firing>& firings
     const auto place = static_cast<std::size_t>(seen_ % 64);
     samples = std::min(place == 0 ? samples_per_piece : 64 - place, block.samples() - first);
     if (condition_->process(block.part(first, samples), place, condition)) {
-      take_piece(condition, {place, samples}, firings);
+      take_piece(condition, place, samples, firings);
     } else {
       condition_was_true_ = false;
     }
@@ -52,10 +52,11 @@ void TriggerKernel::process(const CodesView& block, std::vector<Firing>& firings
   }
 }
 
-void TriggerKernel::take_piece(const PieceWords& condition, Stretch stretch, std::vector<Firing>& firings) {
-  const std::size_t end = stretch.first + stretch.samples;
+void TriggerKernel::take_piece(std::span<const std::uint64_t> condition, std::size_t first_place, std::size_t samples,
+                               std::vector<Firing>& firings) {
+  const std::size_t end = first_place + samples;
   for (std::size_t word = 0; 64 * word < end; ++word) {
-    const std::uint64_t before = condition_was_true_ ? std::uint64_t{1} << (word == 0 ? stretch.first : 0) : 0;
+    const std::uint64_t before = condition_was_true_ ? std::uint64_t{1} << (word == 0 ? first_place : 0) : 0;
     if (condition[word] != 0) take_word(condition[word], before, 64 * word, firings);
     const std::size_t last = std::min<std::size_t>(63, end - 64 * word - 1);
     condition_was_true_ = ((condition[word] >> last) & 1) != 0;

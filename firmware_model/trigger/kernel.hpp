@@ -5,15 +5,17 @@
 #include <cstdint>
 #include <memory>
 #include <optional>
+#include <span>
 #include <vector>
 
-#include "firmware_model/trigger/condition_kernel.hpp"
 #include "firmware_model/trigger/firing.hpp"
 #include "firmware_model/trigger/firing_stages.hpp"
 #include "firmware_model/trigger/settings.hpp"
 #include "traces/waveform/codes.hpp"
 
 namespace cistern {
+
+class ConditionKernel;
 
 /// Copyable: a copy goes on from the same state. How samples are cut into blocks changes nothing.
 class TriggerKernel {
@@ -32,7 +34,8 @@ class TriggerKernel {
   [[nodiscard]] std::int64_t samples_seen() const noexcept { return seen_; }
 
  private:
-  void take_piece(const PieceWords& condition, Stretch stretch, std::vector<Firing>& firings);
+  void take_piece(std::span<const std::uint64_t> condition, std::size_t first_place, std::size_t samples,
+                  std::vector<Firing>& firings);
   void take_word(std::uint64_t condition, std::uint64_t was_true, std::size_t first_place,
                  std::vector<Firing>& firings);
   [[nodiscard]] std::optional<unsigned> next_firing(std::uint64_t condition, std::uint64_t edges,

@@ -37,7 +37,7 @@ OverCondition::OverCondition(const ConditionSettings& settings)
 
 void OverCondition::reset() {
   for (Channel& channel : channels_) {
-    std::fill(channel.bits.begin(), channel.bits.end(), 0);
+    std::fill_n(channel.bits.begin(), history_words_ + 1, 0);
     channel.count = 0;
     channel.any = false;
   }

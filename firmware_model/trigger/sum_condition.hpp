@@ -23,14 +23,16 @@ class SumCondition : public ConditionKernel {
     std::size_t index{0};
     std::int16_t baseline{0};
     std::int64_t needed{0};
-    /// At least `length_` codes of the past, then those of the piece. A sample before the start of a trace
-    /// holds the baseline: it adds 0.
-    std::vector<std::int16_t> codes;
+    /// At least `length_` codes of the past, up to next_. A sample before the start of a trace holds the
+    /// baseline: it adds 0.
+    std::vector<std::int16_t> run;
     std::int64_t sum{0};  ///< of the window that ends with the last piece
     PieceWords fulfilled{};
   };
 
   void make_room(std::size_t samples);
+  [[nodiscard]] bool mark(Channel& channel, std::span<const std::int16_t> codes, std::size_t first_place,
+                          std::size_t head);
 
   std::size_t length_;
   std::int32_t majority_;
