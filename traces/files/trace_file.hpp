@@ -65,6 +65,9 @@ struct TruthColumn {
   std::vector<double> values;
 };
 
+/// The truth columns of an HDF5 file; empty when it has none.
+[[nodiscard]] std::vector<TruthColumn> read_truth(const std::filesystem::path& path);
+
 /// Writes traces; the file appears under its name only at `finish`, whole, or not at all.
 class TraceWriter {
  public:
