@@ -72,6 +72,8 @@ std::int64_t SumCodes(const std::int16_t* codes, std::size_t samples) {
   return total & 0xffff;
 }
 
+const char* InstructionSet() { return hwy::TargetName(HWY_TARGET); }
+
 }  // namespace cistern::HWY_NAMESPACE
 HWY_AFTER_NAMESPACE();
 
@@ -80,6 +82,7 @@ namespace cistern {
 
 HWY_EXPORT(MarkAbove);
 HWY_EXPORT(SumCodes);
+HWY_EXPORT(InstructionSet);
 
 bool mark_above(const std::int16_t* codes, std::size_t samples, std::int16_t limit, std::uint64_t* words) {
   return HWY_DYNAMIC_DISPATCH(MarkAbove)(codes, samples, limit, words);
@@ -88,6 +91,8 @@ bool mark_above(const std::int16_t* codes, std::size_t samples, std::int16_t lim
 std::int64_t sum_codes(const std::int16_t* codes, std::size_t samples) {
   return HWY_DYNAMIC_DISPATCH(SumCodes)(codes, samples);
 }
+
+const char* instruction_set() { return HWY_DYNAMIC_DISPATCH(InstructionSet)(); }
 
 }  // namespace cistern
 #endif

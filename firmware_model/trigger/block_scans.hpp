@@ -41,4 +41,7 @@ Scanned mark_sums(const std::int16_t* codes, Stretch stretch, std::size_t length
 /// Sum of all samples modulo 2^16: the plainest read of memory, for benchmarks.
 std::int64_t sum_codes(const std::int16_t* codes, std::size_t samples);
 
+/// The instruction set that these passes use on this CPU, for example "AVX2".
+const char* instruction_set();
+
 }  // namespace cistern

@@ -42,12 +42,12 @@ void MarginMeter::measure(std::size_t enabled, std::span<const std::int16_t> cod
   const std::int32_t baseline = condition_.baseline_counts[c];
   std::int64_t* margins = margins_[enabled].data();
   if (condition_.kind == TriggerKind::Threshold) {
-    const std::int32_t level = baseline + condition_.level_counts[c];
+    const std::int64_t level = std::int64_t{baseline} + condition_.level_counts[c];
     for (std::size_t s = 0; s < codes.size(); ++s) margins[s] = codes[s] - level;
     return;
   }
   const bool counts_over = condition_.kind == TriggerKind::TimeOverThreshold;
-  const std::int32_t over_from = counts_over ? baseline + condition_.level_counts[c] : 0;
+  const std::int64_t over_from = counts_over ? std::int64_t{baseline} + condition_.level_counts[c] : 0;
   const std::int64_t needed = counts_over ? condition_.min_samples_over : condition_.sum_counts[c];
   auto slot = static_cast<std::size_t>(seen_ % reach_);
   for (std::size_t s = 0; s < codes.size(); ++s) {
