@@ -34,7 +34,7 @@ const KeyDescription* find_key(const Table& table, std::string_view name) {
   return nullptr;
 }
 
-/// "trigger.long.majority" names the same key as "trigger.majority".
+/// "trigger.long.majority" names the same key as "trigger.majority"; "majority" that of every table.
 std::string without_entry_name(std::string_view key) {
   const auto first = key.find('.');
   const auto last = key.rfind('.');
@@ -45,9 +45,11 @@ std::string without_entry_name(std::string_view key) {
   std::vector<std::string> known;
   for (const Table& table : all_tables()) {
     known.push_back(table.name);
-    for (const KeyDescription& own : table.keys) known.push_back(table.name + "." + own.name);
+    const bool is_full = key.find('.') != std::string_view::npos;
+    for (const KeyDescription& own : table.keys) known.push_back(is_full ? table.name + "." + own.name : own.name);
   }
-  throw InputError("cistern explain", fmt::format("unknown key `{}`; nearest: {}", key, nearest_word(key, known)));
+  const std::string shown = shortened(std::string(key), 80);
+  complain({"cistern explain", ""}, fmt::format("unknown key `{}`; nearest: {}", shown, nearest_word(shown, known)));
 }
 
 std::string escape_pipes(std::string text) {
@@ -60,7 +62,9 @@ constexpr std::string_view manual_head = R"(# Scenario reference
 A scenario is a TOML file. This page is generated from the lists that the program checks scenarios with;
 `cistern explain KEY` prints the same. Values carry their units in their names. A per-channel value is one number for
 all channels or a list with one per channel. Any key can be overridden on the command line:
-`--set trigger.long.majority=3` (entries of a list go by their `name`).
+`--set trigger.long.majority=3` (entries of a list go by their `name`), `--set requirements.quiet.at_most=40`. Values are
+TOML, so a text keeps its quotes: `--set 'trigger.long.role="candidate"'`. All tables are checked whatever the command;
+the first fault is reported, in one line. Paths are relative to the scenario.
 
 A scenario with only `[digitizer]` and `[[trigger]]` is enough for `replay` and for the logic part of `qualify`:
 
@@ -79,6 +83,10 @@ window_samples = 150
 min_samples_over = 21
 majority = 2
 ```
+
+A trigger needs one key of each pair of its kind: `threshold` a level (`level_counts` or `level_vem`);
+`time_over_threshold` a level, a window (`window_samples` or `window_ns`) and a minimum (`min_samples_over` or
+`min_ns_over`); `boxcar_sum` a length (`length_samples` or `length_ns`) and a sum (`sum_counts` or `sum_vem`).
 )";
 
 }  // namespace
@@ -88,9 +96,9 @@ std::string explain_keys(std::string_view key) {
   for (const Table& table : all_tables()) {
     if (key.empty() || key == table.name) text += table_text(table) + (key.empty() ? "\n" : "");
     const std::string plain = without_entry_name(key);
-    if (plain.rfind(table.name + ".", 0) != 0) continue;
-    if (const KeyDescription* own = find_key(table, std::string_view(plain).substr(table.name.size() + 1)))
-      text += key_text(table, *own);
+    const bool is_full = plain.rfind(table.name + ".", 0) == 0;
+    const std::string name = is_full ? plain.substr(table.name.size() + 1) : plain;
+    if (const KeyDescription* own = find_key(table, name)) text += key_text(table, *own);
   }
   if (text.empty()) refuse_unknown(key);
   return text;
@@ -102,8 +110,8 @@ std::string scenario_reference() {
     text += fmt::format("\n## `{}`\n\n{}\n\n| key | unit | default | accepted | meaning |\n|---|---|---|---|---|\n",
                         heading_of(table), table.sentence);
     for (const KeyDescription& key : table.keys) {
-      text += fmt::format("| `{}` | {} | {} | {} | {} |\n", key.name, key.unit, key.fallback, escape_pipes(key.range),
-                          escape_pipes(key.sentence));
+      text += fmt::format("| `{}` | {} | {} | {} | {} |\n", key.name, escape_pipes(key.unit),
+                          escape_pipes(key.fallback), escape_pipes(key.range), escape_pipes(key.sentence));
     }
   }
   return text;

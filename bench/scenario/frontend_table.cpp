@@ -1,3 +1,4 @@
+#include "bench/scenario/key_builders.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -7,18 +8,18 @@ namespace {
 /// end's counts_per_mv follows from the digitizer.
 std::vector<Key<FrontendConfig>> frontend_keys() {
   using F = FrontendConfig;
-  return {
-      number_key<F>("pulse_height_mv", "mV", "1.4", {0, 1000, true},
-                    "Peak of a mean single photo-electron after shaping.", &F::pulse_height_mv),
-      number_key<F>("shaping_time_ns", "ns", "12", {1, 1000}, "Time constant tau of the pulse (t/tau)^2 e^(-t/tau).",
-                    &F::shaping_time_ns),
-      number_key<F>("transit_time_spread_ns", "ns", "2", {0, 100}, "Gaussian rms of a photo-electron's transit time.",
-                    &F::transit_time_spread_ns),
-      number_key<F>("charge_spread", "", "0.35", {0, 1}, "Relative rms of the single-photo-electron charge.",
-                    &F::charge_spread),
-      number_key<F>("noise_rms_mv", "mV", "0.7", {0, 1000}, "Electronic noise after shaping, rms.", &F::noise_rms_mv),
-      number_key<F>("noise_correlation", "", "0.5", {0, 0.95}, "Correlation of the noise of adjacent samples.",
-                    &F::noise_correlation)};
+  return {number_key<F>("pulse_height_mv", "mV", from_config, {0, 1000, true},
+                        "Peak of a mean single photo-electron after shaping.", &F::pulse_height_mv),
+          number_key<F>("shaping_time_ns", "ns", from_config, {1, 1000},
+                        "Time constant tau of the pulse (t/tau)^2 e^(-t/tau).", &F::shaping_time_ns),
+          number_key<F>("transit_time_spread_ns", "ns", from_config, {0, 100},
+                        "Gaussian rms of a photo-electron's transit time.", &F::transit_time_spread_ns),
+          number_key<F>("charge_spread", "", from_config, {0, 1}, "Relative rms of the single-photo-electron charge.",
+                        &F::charge_spread),
+          number_key<F>("noise_rms_mv", "mV", from_config, {0, 1000}, "Electronic noise after shaping, rms.",
+                        &F::noise_rms_mv),
+          number_key<F>("noise_correlation", "", from_config, {0, 0.95},
+                        "Correlation of the noise of adjacent samples.", &F::noise_correlation)};
 }
 
 }  // namespace

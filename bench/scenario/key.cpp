@@ -7,6 +7,7 @@
 #include <cmath>
 #include <sstream>
 
+#include "bench/scenario/text.hpp"
 #include "traces/base/errors.hpp"
 #include "traces/base/spelling.hpp"
 
@@ -14,17 +15,33 @@ namespace cistern {
 namespace {
 
 constexpr std::size_t longest_shown = 60;
+constexpr std::size_t longest_key = 120;
+constexpr std::size_t longest_list = 4096;
 
 template <typename Value, typename ReadOne>
 std::vector<Value> read_list(const toml::node& node, const KeyPlace& at, const ReadOne& read_one) {
   const toml::array* array = node.as_array();
   if (array == nullptr) return {read_one(node, at)};
   if (array->empty()) complain(at, "got an empty list, expected at least one value");
+  if (array->size() > longest_list) {
+    complain(at, fmt::format("got {} values, expected at most {}", array->size(), longest_list));
+  }
   std::vector<Value> values;
   for (std::size_t i = 0; i < array->size(); ++i) {
-    values.push_back(read_one((*array)[i], {at.place, fmt::format("{}[{}]", at.key, i)}));
+    values.push_back(read_one((*array)[i], {at.place, fmt::format("{}[{}]", at.key, i), at.unit}));
   }
   return values;
+}
+
+template <typename Value>
+void expect_rising(const std::vector<Value>& values, const toml::node& node, const KeyPlace& at) {
+  const bool rises = std::adjacent_find(values.begin(), values.end(), std::greater_equal<>{}) == values.end();
+  if (!rises) reject(at, node, "values that rise, each one once");
+}
+
+std::string with_range(const char* noun, const NumberRange& range) {
+  const std::string text = range.text();
+  return text.empty() ? noun : fmt::format("{} {}", noun, text);
 }
 
 bool is_name_character(char c) {
@@ -34,48 +51,50 @@ bool is_name_character(char c) {
 }  // namespace
 
 void complain(const KeyPlace& at, const std::string& what) {
-  throw InputError(at.place, at.key.empty() ? what : at.key + ": " + what);
+  throw InputError(one_line(at.place),
+                   one_line(at.key.empty() ? what : fmt::format("{}: {}", shortened(at.key, longest_key), what)));
 }
 
 void reject(const KeyPlace& at, const toml::node& node, const std::string& expected) {
-  complain(at, fmt::format("got {}, expected {}", text_of(node), expected));
+  const std::string unit = at.unit.empty() ? "" : fmt::format(" ({})", at.unit);
+  complain(at, fmt::format("got {}, expected {}{}", text_of(node), expected, unit));
 }
 
 std::string text_of(const toml::node& node) {
   std::ostringstream stream;
   stream << toml::toml_formatter(node);
-  std::string text = stream.str();
-  for (char& c : text) {
-    if (static_cast<unsigned char>(c) < 0x20 || c == 0x7f) c = ' ';
-  }
-  return text.size() <= longest_shown ? text : text.substr(0, longest_shown) + "...";
+  return shortened(one_line(stream.str()), longest_shown);
+}
+
+bool NumberRange::holds(double value) const {
+  if (!std::isfinite(value)) return false;
+  return (low_is_open ? value > low : value >= low) && (high_is_open ? value < high : value <= high);
 }
 
 std::string NumberRange::text() const {
-  const auto shown = [](double value) {
-    return std::abs(value) >= 1e15 ? fmt::format("{:g}", value) : fmt::format("{}", value);
-  };
-  const bool bounded_below = std::isfinite(low);
-  if (bounded_below && std::isfinite(high))
-    return fmt::format("{}{} {} {}", low_is_open ? "more than " : "from ", shown(low),
-                       low_is_open ? "and at most" : "to", shown(high));
-  if (bounded_below) return low_is_open ? "more than " + shown(low) : "at least " + shown(low);
-  return "any";
+  const bool has_low = std::isfinite(low);
+  const bool has_high = std::isfinite(high);
+  if (has_low && has_high && !low_is_open && !high_is_open) return fmt::format("from {} to {}", low, high);
+  std::string text;
+  if (has_low) text += fmt::format("{} {}", low_is_open ? "more than" : "at least", low);
+  if (has_low && has_high) text += " and ";
+  if (has_high) text += fmt::format("{} {}", high_is_open ? "less than" : "at most", high);
+  return text;
 }
 
+std::string number_in(const NumberRange& range) { return with_range("a number", range); }
+std::string integer_in(const NumberRange& range) { return with_range("an integer", range); }
+
 double read_number(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
-  const std::string expected = "a number" + (range.text() == "any" ? "" : ", " + range.text());
   const auto value = node.is_number() ? node.value<double>() : std::nullopt;
-  if (!value || !std::isfinite(*value) || !range.holds(*value)) reject(at, node, expected);
+  if (!value || !range.holds(*value)) reject(at, node, number_in(range));
   return *value;
 }
 
 std::int64_t read_integer(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
-  const std::string expected = "a whole number" + (range.text() == "any" ? "" : ", " + range.text());
-  if (!node.is_integer()) reject(at, node, expected);
-  const std::int64_t value = *node.value<std::int64_t>();
-  if (!range.holds(static_cast<double>(value))) reject(at, node, expected);
-  return value;
+  const auto* integer = node.as_integer();
+  if (integer == nullptr || !range.holds(static_cast<double>(integer->get()))) reject(at, node, integer_in(range));
+  return integer->get();
 }
 
 bool read_switch(const toml::node& node, const KeyPlace& at) {
@@ -92,7 +111,8 @@ std::string read_text(const toml::node& node, const KeyPlace& at, const std::vec
   if (!text) reject(at, node, fmt::format("one of \"{}\"", fmt::join(choices, "\", \"")));
   if (std::find(choices.begin(), choices.end(), *text) == choices.end()) {
     reject(at, node,
-           fmt::format("one of \"{}\"; nearest: \"{}\"", fmt::join(choices, "\", \""), nearest_word(*text, choices)));
+           fmt::format("one of \"{}\"; nearest: \"{}\"", fmt::join(choices, "\", \""),
+                       nearest_word(shortened(*text, longest_shown), choices)));
   }
   return *text;
 }
@@ -117,9 +137,13 @@ std::vector<std::int64_t> read_integers(const toml::node& node, const KeyPlace& 
 
 std::vector<double> read_rising(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
   auto values = read_numbers(node, at, range);
-  if (std::adjacent_find(values.begin(), values.end(), std::greater_equal<>{}) != values.end()) {
-    reject(at, node, "numbers that rise, each one once");
-  }
+  expect_rising(values, node, at);
+  return values;
+}
+
+std::vector<std::int64_t> read_rising_integers(const toml::node& node, const KeyPlace& at, const NumberRange& range) {
+  auto values = read_integers(node, at, range);
+  expect_rising(values, node, at);
   return values;
 }
 

@@ -16,15 +16,16 @@ namespace cistern {
 
 struct Scenario;
 
-/// Where a value stands, for messages: "FILE:LINE" or "--set KEY", and its full key.
+/// Where a value stands, for messages: "FILE:LINE" or "--set KEY", its full key and the key's unit.
 struct KeyPlace {
   std::string place;
-  std::string key;  ///< "trigger.long.window_samples"
+  std::string key;     ///< "trigger.long.window_samples"
+  std::string unit{};  ///< "" for none
 };
 
-/// A value that is not what its key wants. \param expected  "a whole number from 1 to 16"
+/// "PLACE: KEY: got VALUE, expected EXPECTED (UNIT)". \param expected  "an integer from 1 to 16"
 [[noreturn]] void reject(const KeyPlace& at, const toml::node& node, const std::string& expected);
-/// A complaint in the complainer's own words.
+/// A complaint in the complainer's own words. Whatever it quotes, it stays one line.
 [[noreturn]] void complain(const KeyPlace& at, const std::string& what);
 /// The value as the user wrote it, cut to a readable length, on one line.
 [[nodiscard]] std::string text_of(const toml::node& node);
@@ -40,6 +41,9 @@ struct Key {
   std::function<void(Target&, const toml::node&, const KeyPlace&)> read;
 };
 
+/// The range of a key that a later version will accept; its reader refuses every value.
+inline constexpr const char* not_in_this_version = "not in this version";
+
 /// What the manual and `explain` need of a key.
 struct KeyDescription {
   std::string name;
@@ -49,19 +53,23 @@ struct KeyDescription {
   std::string sentence;
 };
 
-/// A closed or half-open range of numbers.
 struct NumberRange {
   double low{-std::numeric_limits<double>::infinity()};
   double high{std::numeric_limits<double>::infinity()};
   bool low_is_open{false};
-  [[nodiscard]] bool holds(double value) const { return (low_is_open ? value > low : value >= low) && value <= high; }
-  [[nodiscard]] std::string text() const;  ///< "from 0 to 90", "more than 0", "any"
+  bool high_is_open{false};
+  [[nodiscard]] bool holds(double value) const;  ///< false for what is not a finite number
+  [[nodiscard]] std::string text() const;  ///< "from 0 to 90", "more than 0 and at most 5", "at least 0", "" (any)
 };
+
+/// "a number from 0 to 90", "an integer".
+[[nodiscard]] std::string number_in(const NumberRange& range);
+[[nodiscard]] std::string integer_in(const NumberRange& range);
 
 [[nodiscard]] double read_number(const toml::node& node, const KeyPlace& at, const NumberRange& range);
 [[nodiscard]] std::int64_t read_integer(const toml::node& node, const KeyPlace& at, const NumberRange& range);
 [[nodiscard]] bool read_switch(const toml::node& node, const KeyPlace& at);
-/// \param choices  empty: any text of 1 to 200 characters
+/// \param choices  empty: any text of 1 to 2,000 bytes
 [[nodiscard]] std::string read_text(const toml::node& node, const KeyPlace& at,
                                     const std::vector<std::string>& choices);
 /// Letters, digits, - and _; 1 to 40 characters.
@@ -70,40 +78,10 @@ struct NumberRange {
 [[nodiscard]] std::vector<double> read_numbers(const toml::node& node, const KeyPlace& at, const NumberRange& range);
 [[nodiscard]] std::vector<std::int64_t> read_integers(const toml::node& node, const KeyPlace& at,
                                                       const NumberRange& range);
-/// A list that rises strictly.
+/// The same, each larger than the one before.
 [[nodiscard]] std::vector<double> read_rising(const toml::node& node, const KeyPlace& at, const NumberRange& range);
-
-template <typename Target, typename Member>
-Key<Target> number_key(std::string name, std::string unit, std::string fallback, NumberRange range,
-                       std::string sentence, Member member) {
-  return {std::move(name),
-          std::move(unit),
-          std::move(fallback),
-          range.text(),
-          std::move(sentence),
-          [member, range](Target& target, const toml::node& node, const KeyPlace& at) {
-            std::invoke(member, target) = read_number(node, at, range);
-          }};
-}
-
-template <typename Target, typename Member>
-Key<Target> integer_key(std::string name, std::string unit, std::string fallback, NumberRange range,
-                        std::string sentence, Member member) {
-  return {std::move(name),
-          std::move(unit),
-          std::move(fallback),
-          "whole, " + range.text(),
-          std::move(sentence),
-          [member, range](Target& target, const toml::node& node, const KeyPlace& at) {
-            auto& place = std::invoke(member, target);
-            using Value = std::decay_t<decltype(place)>;
-            if constexpr (requires { typename Value::value_type; }) {
-              place = static_cast<typename Value::value_type>(read_integer(node, at, range));
-            } else {
-              place = static_cast<Value>(read_integer(node, at, range));
-            }
-          }};
-}
+[[nodiscard]] std::vector<std::int64_t> read_rising_integers(const toml::node& node, const KeyPlace& at,
+                                                             const NumberRange& range);
 
 template <typename Target>
 std::vector<KeyDescription> describe(const std::vector<Key<Target>>& keys) {

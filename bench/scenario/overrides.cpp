@@ -1,7 +1,11 @@
 #include "bench/scenario/overrides.hpp"
 
+#include <algorithm>
+
 namespace cistern {
 namespace {
+
+constexpr std::size_t longest_shown = 60;
 
 std::vector<std::string> split_key(const std::string& key) {
   std::vector<std::string> parts(1);
@@ -15,7 +19,7 @@ std::vector<std::string> split_key(const std::string& key) {
   return parts;
 }
 
-KeyPlace place_of(const Override& override) { return {"--set " + override.key, ""}; }
+KeyPlace place_of(const Override& override) { return {"--set " + shortened(override.key, 200), ""}; }
 
 const Table& find_table(const Override& override, const std::vector<Table>& tables, const std::string& name) {
   std::vector<std::string> known;
@@ -23,7 +27,8 @@ const Table& find_table(const Override& override, const std::vector<Table>& tabl
     if (table.name == name) return table;
     known.push_back(table.name);
   }
-  complain(place_of(override), fmt::format("unknown table `{}`; nearest: {}", name, nearest_word(name, known)));
+  const std::string shown = shortened(name, longest_shown);
+  complain(place_of(override), fmt::format("unknown table `{}`; nearest: {}", shown, nearest_word(shown, known)));
 }
 
 toml::table& entry_named(const Override& override, toml::table& root, const std::string& list,
@@ -35,17 +40,20 @@ toml::table& entry_named(const Override& override, toml::table& root, const std:
     if (entry == nullptr) continue;
     const auto own = (*entry)["name"].value<std::string>();
     if (own == name) return *entry;
-    if (own) known.push_back(*own);
+    if (own) known.push_back(shortened(*own, longest_shown));
   }
+  if (known.empty()) complain(place_of(override), fmt::format("the scenario has no [[{}]], expected one", list));
+  const std::string shown = shortened(name, longest_shown);
   complain(place_of(override),
-           known.empty() ? fmt::format("the scenario has no [[{}]]", list)
-                         : fmt::format("no [[{}]] is named `{}`; nearest: {}", list, name, nearest_word(name, known)));
+           fmt::format("no [[{}]] is named `{}`; nearest: {}", list, shown, nearest_word(shown, known)));
 }
 
 toml::table& table_at(const Override& override, toml::table& parent, const std::string& name) {
   if (!parent.contains(name)) parent.insert(name, toml::table{});
   toml::table* table = parent[name].as_table();
-  if (table == nullptr) complain(place_of(override), fmt::format("`{}` is not a table in the scenario", name));
+  if (table == nullptr)
+    complain(place_of(override),
+             fmt::format("`{}` is {} in the scenario, expected a table", name, text_of(*parent.get(name))));
   return *table;
 }
 
@@ -54,15 +62,30 @@ void set_value(const Override& override, toml::table& table, const std::string& 
   try {
     const toml::table parsed = toml::parse("v = " + override.value);
     if (parsed.size() != 1 || !parsed.contains("v"))
-      complain(place_of(override), fmt::format("got {}, expected one TOML value", override.value.substr(0, 60)));
+      complain(place_of(override),
+               fmt::format("got {}, expected one TOML value", shortened(one_line(override.value), longest_shown)));
     table.insert_or_assign(key, *parsed.get("v"));
   } catch (const toml::parse_error&) {
-    std::string shown = override.value.substr(0, 60);
-    for (char& c : shown) {
-      if (static_cast<unsigned char>(c) < 0x20) c = ' ';
-    }
+    const std::string shown = shortened(one_line(override.value), longest_shown);
     complain(place_of(override),
              fmt::format("got {}, expected a TOML value: 3, 0.5, true, \"text\" (with its quotes) or [1, 2]", shown));
+  }
+}
+
+/// [digitizer.baseline] is to be a table of its own: its keys are refused with it.
+bool is_within_later_key(const Table& table, const std::vector<std::string>& parts) {
+  return parts.size() == 3 && std::any_of(table.keys.begin(), table.keys.end(), [&](const KeyDescription& key) {
+           return key.name == parts[1] && key.range == not_in_this_version;
+         });
+}
+
+void check_depth(const Override& override, const Table& table, const std::vector<std::string>& parts) {
+  const std::size_t depth = table.shape == TableShape::Single ? 2 : 3;
+  if (parts.size() != depth && !is_within_later_key(table, parts)) {
+    complain(place_of(override), fmt::format("expected {}.{}KEY=VALUE", table.name, depth == 3 ? "NAME." : ""));
+  }
+  if (table.shape == TableShape::List && parts.back() == "name") {
+    complain(place_of(override), "expected another key: --set finds entries by their name, so it cannot change it");
   }
 }
 
@@ -71,10 +94,7 @@ void set_value(const Override& override, toml::table& table, const std::string& 
 std::string apply_override(const Override& override, const std::vector<Table>& tables, toml::table& root) {
   const auto parts = split_key(override.key);
   const Table& table = find_table(override, tables, parts.front());
-  const std::size_t depth = table.shape == TableShape::Single ? 2 : 3;
-  if (parts.size() != depth) {
-    complain(place_of(override), fmt::format("expected {}.{}KEY=VALUE", table.name, depth == 3 ? "NAME." : ""));
-  }
+  check_depth(override, table, parts);
   switch (table.shape) {
     case TableShape::Single: set_value(override, table_at(override, root, parts[0]), parts[1]); break;
     case TableShape::List: set_value(override, entry_named(override, root, parts[0], parts[1]), parts[2]); break;
@@ -82,7 +102,7 @@ std::string apply_override(const Override& override, const std::vector<Table>& t
       set_value(override, table_at(override, table_at(override, root, parts[0]), parts[1]), parts[2]);
       break;
   }
-  return override.key;
+  return table.shape == TableShape::Single ? parts[0] + "." + parts[1] : override.key;
 }
 
 }  // namespace cistern

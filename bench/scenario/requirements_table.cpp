@@ -1,5 +1,6 @@
 #include <algorithm>
 
+#include "bench/scenario/key_builders.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -27,16 +28,12 @@ std::vector<Key<RequirementKeys>> requirement_keys() {
            [](R& r, const auto& node, const auto& at) {
              r.requirement.figure = read_text(node, at, {});
              if (!is_figure_name(r.requirement.figure))
-               reject(at, node, "a figure's name, such as background_rate.long");
+               reject(at, node, "a figure, quantity.subject[.condition], such as background_rate.long");
            }},
-          {"at_most", "of the figure", "none", "any number", "Upper bound; either this or at_least.",
-           [](R& r, const auto& node, const auto& at) { r.at_most = read_number(node, at, {}); }},
-          {"at_least", "of the figure", "none", "any number", "Lower bound.",
-           [](R& r, const auto& node, const auto& at) { r.at_least = read_number(node, at, {}); }},
-          {"confidence", "", "0.95", "more than 0.5 and at most 0.9999", "One-sided confidence of the verdict.",
-           [](R& r, const auto& node, const auto& at) {
-             r.requirement.confidence = read_number(node, at, {0.5, 0.9999, true});
-           }}};
+          number_key<R>("at_most", "of the figure", "none", {}, "Upper bound; either this or at_least.", &R::at_most),
+          number_key<R>("at_least", "of the figure", "none", {}, "Lower bound.", &R::at_least),
+          number_key<R>("confidence", "", from_config, {0.5, 1, true, true}, "One-sided confidence of the verdict.",
+                        [](R& r) -> double& { return r.requirement.confidence; })};
 }
 
 }  // namespace
@@ -54,7 +51,9 @@ Table requirements_table() {
     read_keys(context, keys, toml, full_name, values);
     const KeyPlace at = context.at(full_name, toml);
     if (values.at_most.has_value() == values.at_least.has_value()) {
-      complain(at, fmt::format("needs one of at_most and at_least, got {}", values.at_most ? "both" : "neither"));
+      const TableView view{context, &toml, full_name};
+      complain({view.blame({"at_most", "at_least"}).place, full_name},
+               fmt::format("got {}, expected one of at_most and at_least", values.at_most ? "both" : "neither"));
     }
     values.requirement.name = full_name.substr(full_name.find('.') + 1);
     values.requirement.place = at.place;

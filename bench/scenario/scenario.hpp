@@ -57,6 +57,7 @@ struct TriggerPlan {
   std::int32_t majority{1};
   std::vector<std::int32_t> channels;  ///< the mask; empty: all
   FiringSettings firing;
+  std::map<std::string, std::string> places;  ///< of the keys that are written: "FILE:LINE" or "--set KEY"
 };
 
 /// One [[signal]]: test signals placed by `qualify`, every size with every spread.

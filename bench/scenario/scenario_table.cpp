@@ -1,3 +1,4 @@
+#include "bench/scenario/key_builders.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -5,11 +6,9 @@ namespace cistern {
 Table scenario_table() {
   return single_table<ScenarioIdentity>(
       "scenario", "What the scenario is called, and the seed of its random numbers.",
-      {{"title", "", "untitled", "text", "The headline of reports.",
-        [](auto& identity, const auto& node, const auto& at) { identity.title = read_text(node, at, {}); }},
-       {"summary", "", "none", "text", "A sentence or two for readers.",
-        [](auto& identity, const auto& node, const auto& at) { identity.summary = read_text(node, at, {}); }},
-       integer_key<ScenarioIdentity>("seed", "", "1", {0, 9e18}, "Same seed, same results; --seed wins over it.",
+      {text_key<ScenarioIdentity>("title", from_config, "The headline of reports.", &ScenarioIdentity::title),
+       text_key<ScenarioIdentity>("summary", "none", "A sentence or two for readers.", &ScenarioIdentity::summary),
+       integer_key<ScenarioIdentity>("seed", "", from_config, {0}, "Same seed, same results; --seed wins over it.",
                                      &ScenarioIdentity::seed)},
       [](Scenario& scenario) -> ScenarioIdentity& { return scenario.identity; });
 }

@@ -1,3 +1,4 @@
+#include "bench/scenario/key_builders.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -5,25 +6,16 @@ namespace {
 
 std::vector<Key<SignalPlan>> signal_keys() {
   using S = SignalPlan;
-  return {{"name", "", "required", "letters, digits, - and _", "In figure names; each once.",
-           [](S& s, const auto& node, const auto& at) { s.name = read_name(node, at); }},
-          {"kind", "", "required", "muon, electromagnetic or shower", "What the light comes from; see docs/physics.md.",
-           [](S& s, const auto& node, const auto& at) {
-             const std::string kind = read_text(node, at, {"muon", "electromagnetic", "shower"});
-             s.kind = kind == "muon"     ? SignalKind::Muon
-                      : kind == "shower" ? SignalKind::Shower
-                                         : SignalKind::Electromagnetic;
-           }},
-          {"sizes_vem", "VEM", "required", "rising, more than 0 and at most 100000",
-           "True sizes: mean photo-electrons over those of one VEM.",
-           [](S& s, const auto& node, const auto& at) {
-             s.sizes_vem = read_rising(node, at, {0, 1e5, true});
-           }},
-          {"spreads_ns", "ns", "[0]", "rising, from 0 to 100000",
-           "10 to 90 % of the arrival times; every size is made with every spread.",
-           [](S& s, const auto& node, const auto& at) {
-             s.spreads_ns = read_rising(node, at, {0, 1e5});
-           }}};
+  return {name_key<S>("In figure names; each once.", &S::name),
+          choice_key<S, SignalKind>("kind", "required",
+                                    {{"muon", SignalKind::Muon},
+                                     {"electromagnetic", SignalKind::Electromagnetic},
+                                     {"shower", SignalKind::Shower}},
+                                    "What the light comes from; see docs/physics.md.", &S::kind),
+          rising_key<S>("sizes_vem", "VEM", "required", {0, 1e5, true},
+                        "True sizes: mean photo-electrons over those of one VEM.", &S::sizes_vem),
+          rising_key<S>("spreads_ns", "ns", from_config, {0, 1e5},
+                        "10 to 90 % of the arrival times; every size is made with every spread.", &S::spreads_ns)};
 }
 
 }  // namespace

@@ -24,8 +24,8 @@ struct Table {
   std::vector<KeyDescription> keys;
   /// Reads the table (for a List or Named one: one entry). \param full_name  "trigger.long"
   std::function<void(const ReadingContext&, const toml::table&, const std::string& full_name, Scenario&)> read;
-  /// Checks that need more than one key. \param at  where the table stands
-  std::function<void(const KeyPlace& at, Scenario&)> check;
+  /// Checks that need more than one key, whether the scenario has the table or not.
+  std::function<void(const TableView&, Scenario&)> check;
 };
 
 [[nodiscard]] Table scenario_table();
@@ -47,7 +47,7 @@ struct Table {
 [[nodiscard]] const std::vector<Table>& all_tables();
 
 /// Complains when the blocks of a live time are longer than the shortest live time.
-void check_blocks(const KeyPlace& at, double block_s, double live_s, double quick_s);
+void check_blocks(const TableView& at, double block_s, double live_time_s, double quick_live_time_s);
 
 /// A Single table whose keys fill `part(scenario)`.
 template <typename Target, typename Part>

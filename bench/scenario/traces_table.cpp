@@ -1,3 +1,4 @@
+#include "bench/scenario/key_builders.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -15,10 +16,13 @@ Table traces_table() {
     std::string file;
   };
   using T = TracesKeys;
+  const auto config = [](auto member) {
+    return [member](T & t) -> auto& { return t.config.*member; };
+  };
   const std::vector<Key<T>> keys{
-      {"file", "", "none", "a path, relative to the scenario",
-       "Recorded traces: .csv, .npy, .h5 or .hdf5; --traces wins over it.",
-       [](T& t, const auto& node, const auto& at) { t.file = read_text(node, at, {}); }},
+      text_key<T>("file", "none",
+                  "Recorded traces, a path relative to the scenario: .csv, .npy, .h5 or .hdf5; --traces wins over it.",
+                  &T::file),
       {"selection", "", "none", "unbiased or triggered_by:NAME",
        "How the traces were selected, where their file does not say it.",
        [](T& t, const auto& node, const auto& at) {
@@ -28,16 +32,14 @@ Table traces_table() {
            reject(at, node, "\"unbiased\" or \"triggered_by:NAME\"");
          t.config.selection = text;
        }},
-      {"live_time_s", "s", "none", "more than 0", "Live time of all traces together, where their file does not say it.",
-       [](T& t, const auto& node, const auto& at) {
-         t.config.live_time_s = read_number(node, at, {0, 1e12, true});
-       }},
-      {"contiguous", "", "false", "true or false", "Each trace goes on where the last ended.",
-       [](T& t, const auto& node, const auto& at) { t.config.contiguous = read_switch(node, at); }},
-      {"resample", "", "false", "false", "Traces of another sampling rate: not in this version.",
-       [](T&, const auto& node, const auto& at) {
-         if (read_switch(node, at))
-           complain(at, "resampling is not in this version; expected traces at [digitizer] sample_rate_mhz");
+      number_key<T>("live_time_s", "s", "none", {0, 1e12, true},
+                    "Live time of all traces together, where their file does not say it.",
+                    config(&RecordedTracesConfig::live_time_s)),
+      switch_key<T>("contiguous", "false", "Each trace goes on where the last ended, where their file does not say it.",
+                    config(&RecordedTracesConfig::contiguous)),
+      {"resample", "", "none", not_in_this_version, "Traces of another sampling rate.",
+       [](T&, const auto&, const auto& at) {
+         complain(at, "resampling is not in this version; expected traces at [digitizer] sample_rate_mhz");
        }}};
   Table table;
   table.name = "traces";

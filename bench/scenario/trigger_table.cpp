@@ -1,5 +1,7 @@
 #include <algorithm>
 
+#include "bench/scenario/key_builders.hpp"
+#include "bench/scenario/resolve.hpp"
 #include "bench/scenario/tables.hpp"
 
 namespace cistern {
@@ -7,97 +9,100 @@ namespace {
 
 using P = TriggerPlan;
 
-std::vector<std::int32_t> narrow(const std::vector<std::int64_t>& values) { return {values.begin(), values.end()}; }
+const std::vector<std::pair<std::string, TriggerKind>>& kinds() {
+  static const std::vector<std::pair<std::string, TriggerKind>> all{
+      {"threshold", TriggerKind::Threshold},
+      {"time_over_threshold", TriggerKind::TimeOverThreshold},
+      {"boxcar_sum", TriggerKind::BoxcarSum}};
+  return all;
+}
+
+Key<P> kind_key() {
+  Key<P> key = choice_key<P, TriggerKind>("kind", "required", kinds(), "The rule; see docs/triggers.md.", &P::kind);
+  key.read = [plain = key.read, expected = key.range](P& plan, const toml::node& node, const KeyPlace& at) {
+    const auto* kind = node.as_string();
+    if (kind != nullptr && (kind->get() == "library" || kind->get() == "rtl")) {
+      complain(at, fmt::format("kind \"{}\" is not in this version; expected {}", kind->get(), expected));
+    }
+    plain(plan, node, at);
+  };
+  return key;
+}
+
+/// Figures call the two sets of triggers in_service and candidate.
+Key<P> name_of_trigger_key() {
+  Key<P> key = name_key<P>("In figure names and with --set; each once, and not in_service or candidate.", &P::name);
+  key.read = [plain = key.read](P& plan, const toml::node& node, const KeyPlace& at) {
+    plain(plan, node, at);
+    if (plan.name == "in_service" || plan.name == "candidate") {
+      reject(at, node, "another name, since figures call a set of triggers so");
+    }
+  };
+  return key;
+}
+
+/// A bare number could be meant as a number of channels, so only a list will do.
+Key<P> mask_key() {
+  Key<P> key =
+      rising_integers_key<P>("channels", "", "all", {0, 15}, "The mask: channels that count, from 0.", &P::channels);
+  key.range = "a list; " + key.range;
+  key.read = [plain = key.read](P& plan, const toml::node& node, const KeyPlace& at) {
+    if (!node.is_array()) reject(at, node, "a list of channels, such as [0, 1, 2]");
+    plain(plan, node, at);
+  };
+  return key;
+}
 
 std::vector<Key<P>> trigger_keys() {
-  return {{"name", "", "required", "letters, digits, - and _", "In figure names and with --set; each once.",
-           [](P& p, const auto& node, const auto& at) { p.name = read_name(node, at); }},
-          {"kind", "", "required", "threshold, time_over_threshold or boxcar_sum", "The rule; see docs/triggers.md.",
-           [](P& p, const auto& node, const auto& at) {
-             const std::string kind =
-                 read_text(node, at, {"threshold", "time_over_threshold", "boxcar_sum", "library", "rtl"});
-             if (kind == "library" || kind == "rtl")
-               complain(at, fmt::format("kind \"{}\" is not in this version; expected \"threshold\", "
-                                        "\"time_over_threshold\" or \"boxcar_sum\"",
-                                        kind));
-             p.kind = kind == "threshold"    ? TriggerKind::Threshold
-                      : kind == "boxcar_sum" ? TriggerKind::BoxcarSum
-                                             : TriggerKind::TimeOverThreshold;
-           }},
-          {"role", "", "both", "in_service or candidate",
-           "Today's trigger, the one being qualified, or (without the key) part of both stations.",
-           [](P& p, const auto& node, const auto& at) {
-             p.role = read_text(node, at, {"in_service", "candidate"}) == "candidate" ? TriggerRole::Candidate
-                                                                                      : TriggerRole::InService;
-           }},
-          {"level_counts", "counts", "none", "whole; one, or one per channel",
-           "Level above baseline; equal counts as over. Not for boxcar_sum.",
-           [](P& p, const auto& node, const auto& at) {
-             p.level_counts = narrow(read_integers(node, at, {-32768, 32768}));
-           }},
-          {"level_vem", "VEM", "none", "one, or one per channel",
-           "The same in pulse heights of one VEM; needs height_counts_per_vem.",
-           [](P& p, const auto& node, const auto& at) {
-             p.level_vem = read_numbers(node, at, {-1e6, 1e6});
-           }},
-          {"window_samples", "samples", "none", "whole, from 1 to 65536",
-           "time_over_threshold: the sliding window, this sample included.",
-           [](P& p, const auto& node, const auto& at) {
-             p.window_samples = static_cast<std::int32_t>(read_integer(node, at, {1, 65536}));
-           }},
-          {"window_ns", "ns", "none", "more than 0", "The same in time.",
-           [](P& p, const auto& node, const auto& at) {
-             p.window_ns = read_number(node, at, {0, 1e9, true});
-           }},
-          {"min_samples_over", "samples", "none", "whole, from 1 to window_samples",
-           "time_over_threshold: samples over that a channel needs in the window.",
-           [](P& p, const auto& node, const auto& at) {
-             p.min_samples_over = static_cast<std::int32_t>(read_integer(node, at, {1, 65536}));
-           }},
-          {"min_ns_over", "ns", "none", "more than 0", "The same in time.",
-           [](P& p, const auto& node, const auto& at) {
-             p.min_ns_over = read_number(node, at, {0, 1e9, true});
-           }},
-          {"length_samples", "samples", "none", "whole, from 1 to 65536", "boxcar_sum: length of the sliding sum.",
-           [](P& p, const auto& node, const auto& at) {
-             p.length_samples = static_cast<std::int32_t>(read_integer(node, at, {1, 65536}));
-           }},
-          {"length_ns", "ns", "none", "more than 0", "The same in time.",
-           [](P& p, const auto& node, const auto& at) {
-             p.length_ns = read_number(node, at, {0, 1e9, true});
-           }},
-          {"sum_counts", "counts x samples", "none", "whole; one, or one per channel",
-           "boxcar_sum: the sum above baseline that a channel needs; equal is enough.",
-           [](P& p, const auto& node, const auto& at) {
-             p.sum_counts = read_integers(node, at, {-4e9, 4e9});
-           }},
-          {"sum_vem", "VEM", "none", "one, or one per channel",
-           "The same in pulse areas of one VEM; needs area_counts_per_vem.",
-           [](P& p, const auto& node, const auto& at) {
-             p.sum_vem = read_numbers(node, at, {-1e6, 1e6});
-           }},
-          integer_key<P>("majority", "channels", "1", {1, 16}, "Channels that must fulfil the condition together.",
-                         &P::majority),
-          {"channels", "", "all", "whole, from 0; each once", "The mask: channels that count.",
-           [](P& p, const auto& node, const auto& at) {
-             p.channels = narrow(read_integers(node, at, {0, 15}));
-           }},
-          {"enabled", "", "true", "true or false", "A disabled trigger's firings are counted as disabled.",
-           [](P& p, const auto& node, const auto& at) { p.firing.enabled = read_switch(node, at); }},
-          {"hold_off_samples", "samples", "0", "whole, from 0 to 1000000000",
-           "Samples after a firing in which others are suppressed.",
-           [](P& p, const auto& node, const auto& at) {
-             p.firing.hold_off_samples = read_integer(node, at, {0, 1e9});
-           }},
-          {"rearm", "", "edge", "edge or level",
-           "Whether a condition still true after hold-off must be false first (edge) or fires at once (level).",
-           [](P& p, const auto& node, const auto& at) {
-             p.firing.rearm = read_text(node, at, {"edge", "level"}) == "edge" ? Rearm::Edge : Rearm::Level;
-           }},
-          {"prescale", "", "1", "whole, from 1 to 1000000000", "Passes every n-th firing.",
-           [](P& p, const auto& node, const auto& at) {
-             p.firing.prescale = read_integer(node, at, {1, 1e9});
-           }}};
+  constexpr auto level = static_cast<double>(largest_level_counts);
+  constexpr auto sum = static_cast<double>(largest_sum_counts);
+  const auto firing = [](auto member) {
+    return [member](P & p) -> auto& { return p.firing.*member; };
+  };
+  return {
+      name_of_trigger_key(),
+      kind_key(),
+      {"role", "", "both", "one of in_service, candidate",
+       "Today's trigger, the one being qualified, or (without the key) part of both stations.",
+       [](P& p, const auto& node, const auto& at) {
+         p.role = read_text(node, at, {"in_service", "candidate"}) == "candidate" ? TriggerRole::Candidate
+                                                                                  : TriggerRole::InService;
+       }},
+      channel_integers_key<P>("level_counts", "counts", "none", {-level, level},
+                              "threshold, time_over_threshold: level above baseline, equal is over; or level_vem.",
+                              &P::level_counts),
+      channel_numbers_key<P>("level_vem", "VEM", "none", {-1e6, 1e6},
+                             "The same in pulse heights of one VEM; needs height_counts_per_vem.", &P::level_vem),
+      integer_key<P>("window_samples", "samples", "none", {1, 65536},
+                     "time_over_threshold: the sliding window, this sample included; or window_ns.",
+                     &P::window_samples),
+      number_key<P>("window_ns", "ns", "none", {0, 1e9, true}, "The same in time.", &P::window_ns),
+      integer_key<P>("min_samples_over", "samples", "none", {1, 65536},
+                     "time_over_threshold: samples over that a channel needs, at most the window; or min_ns_over.",
+                     &P::min_samples_over),
+      number_key<P>("min_ns_over", "ns", "none", {0, 1e9, true}, "The same in time.", &P::min_ns_over),
+      integer_key<P>("length_samples", "samples", "none", {1, 65536},
+                     "boxcar_sum: length of the sliding sum; or length_ns.", &P::length_samples),
+      number_key<P>("length_ns", "ns", "none", {0, 1e9, true}, "The same in time.", &P::length_ns),
+      channel_integers_key<P>("sum_counts", "counts x samples", "none", {-sum, sum},
+                              "boxcar_sum: the sum above baseline that a channel needs, equal is enough; or sum_vem.",
+                              &P::sum_counts),
+      channel_numbers_key<P>("sum_vem", "VEM", "none", {-1e6, 1e6},
+                             "The same in pulse areas of one VEM; needs area_counts_per_vem.", &P::sum_vem),
+      integer_key<P>("majority", "channels", from_config, {1, 16},
+                     "Channels that must fulfil the condition together; at most those of the mask.", &P::majority),
+      mask_key(),
+      switch_key<P>("enabled", from_config, "A disabled trigger's firings are counted as disabled.",
+                    firing(&FiringSettings::enabled)),
+      integer_key<P>("hold_off_samples", "samples", from_config, {0, 1e9},
+                     "Samples after a firing in which others are suppressed.",
+                     firing(&FiringSettings::hold_off_samples)),
+      choice_key<P, Rearm>("rearm", from_config, {{"edge", Rearm::Edge}, {"level", Rearm::Level}},
+                           "Whether a condition still true after hold-off must be false first (edge) or fires at once "
+                           "(level, which needs hold_off_samples of at least 1).",
+                           firing(&FiringSettings::rearm)),
+      integer_key<P>("prescale", "", from_config, {1, 1e9}, "Passes every n-th firing.",
+                     firing(&FiringSettings::prescale))};
 }
 
 /// A pair of keys of which a kind needs exactly one.
@@ -116,58 +121,74 @@ std::vector<EitherKey> keys_of(TriggerKind kind) {
   return {};
 }
 
-void check_keys_of_kind(const KeyPlace& at, const ReadingContext& context, const toml::table& toml, TriggerKind kind) {
+std::string words_of(const std::vector<EitherKey>& keys) {
+  std::string words;
+  for (const EitherKey& either : keys) {
+    words += fmt::format("{}{} or {}", words.empty() ? "" : ", ", either.counts, either.physical);
+  }
+  return words;
+}
+
+void expect_one_of_each_pair(const TableView& at, TriggerKind kind) {
+  for (const EitherKey& either : keys_of(kind)) {
+    const bool has_counts = at.table->contains(either.counts);
+    if (has_counts != at.table->contains(either.physical)) continue;
+    complain({at.blame({either.counts, either.physical}).place, at.full_name},
+             fmt::format("got {} of {} and {}, expected one of them for kind {}", has_counts ? "both" : "neither",
+                         either.counts, either.physical, name_of(kind)));
+  }
+}
+
+void refuse_keys_of_other_kinds(const TableView& at, TriggerKind kind) {
   const auto own = keys_of(kind);
-  for (const EitherKey& either : own) {
-    const bool has_counts = toml.contains(either.counts);
-    if (has_counts == toml.contains(either.physical)) {
-      complain(at, fmt::format("kind {} needs one of {} and {}, got {}", name_of(kind), either.counts, either.physical,
-                               has_counts ? "both" : "neither"));
+  const auto refuse_foreign = [&](const EitherKey& either) {
+    const auto is_same = [&](const EitherKey& mine) { return std::string_view(mine.counts) == either.counts; };
+    if (std::any_of(own.begin(), own.end(), is_same)) return;
+    for (const char* key : {either.counts, either.physical}) {
+      if (!at.table->contains(key)) continue;
+      complain({at.blame({key, "kind"}).place, at.full_name},
+               fmt::format("{} is not a key of kind {}; its keys are {}", key, name_of(kind), words_of(own)));
     }
-  }
+  };
   for (const TriggerKind other : {TriggerKind::TimeOverThreshold, TriggerKind::BoxcarSum}) {
-    for (const EitherKey& either : keys_of(other)) {
-      for (const char* name : {either.counts, either.physical}) {
-        const bool is_own = std::any_of(
-            own.begin(), own.end(), [&](const EitherKey& e) { return std::string_view(e.counts) == either.counts; });
-        if (!is_own && toml.contains(name)) {
-          complain(context.at(at.key + "." + name, *toml.get(name)),
-                   fmt::format("is no key of kind {}; expected it only with {}", name_of(kind), name_of(other)));
-        }
-      }
-    }
+    for (const EitherKey& either : keys_of(other)) refuse_foreign(either);
   }
 }
 
-template <typename Value>
-void check_list(const KeyPlace& at, const char* key, const std::optional<std::vector<Value>>& values,
-                std::int32_t channels) {
-  if (values) expect_per_channel({at.place, at.key + "." + key}, *values, channels);
-}
-
-void check_against_digitizer(const KeyPlace& at, const P& plan, const Scenario& scenario) {
-  const std::int32_t channels = scenario.digitizer.channels;
-  check_list(at, "level_counts", plan.level_counts, channels);
-  check_list(at, "level_vem", plan.level_vem, channels);
-  check_list(at, "sum_counts", plan.sum_counts, channels);
-  check_list(at, "sum_vem", plan.sum_vem, channels);
-  std::vector<std::int32_t> mask = plan.channels;
-  std::sort(mask.begin(), mask.end());
-  if (std::adjacent_find(mask.begin(), mask.end()) != mask.end())
-    complain({at.place, at.key + ".channels"}, "names a channel twice, expected each once");
-  if (!mask.empty() && mask.back() >= channels) {
-    complain({at.place, at.key + ".channels"},
-             fmt::format("got {}, expected 0 to {}: there are {} channels", mask.back(), channels - 1, channels));
+void check_against_digitizer(const TableView& at, const P& plan, std::int32_t channels) {
+  const auto check_list = [&](const char* key, const auto& values) {
+    if (values) expect_per_channel(at.at(key), *values, channels);
+  };
+  check_list("level_counts", plan.level_counts);
+  check_list("level_vem", plan.level_vem);
+  check_list("sum_counts", plan.sum_counts);
+  check_list("sum_vem", plan.sum_vem);
+  if (!plan.channels.empty() && plan.channels.back() >= channels) {
+    complain(at.at("channels"), fmt::format("got channel {}, expected 0 to {}, since [digitizer] channels is {}",
+                                            plan.channels.back(), channels - 1, channels));
   }
-  const auto usable = mask.empty() ? channels : static_cast<std::int32_t>(mask.size());
+  const auto usable = plan.channels.empty() ? channels : static_cast<std::int32_t>(plan.channels.size());
   if (plan.majority > usable) {
-    complain({at.place, at.key + ".majority"},
+    complain(at.blame({"majority", "channels"}),
              fmt::format("got {}, expected at most {}, the number of channels that count", plan.majority, usable));
   }
-  if (plan.firing.rearm == Rearm::Level && plan.firing.hold_off_samples == 0) {
-    complain({at.place, at.key + ".rearm"},
-             "got \"level\" with hold_off_samples = 0, expected hold_off_samples of at least 1 with it");
-  }
+}
+
+void check_rearm(const TableView& at, const P& plan) {
+  if (plan.firing.rearm == Rearm::Edge || plan.firing.hold_off_samples > 0) return;
+  complain(at.blame({"rearm", "hold_off_samples"}),
+           "got \"level\" with hold_off_samples = 0, expected hold_off_samples of at least 1 with it (samples)");
+}
+
+/// What can be computed now must come out in range now, whatever the command. A calibration that the
+/// scenario lacks may still come with a trace file.
+void check_resolved(const P& plan, const Scenario& scenario) {
+  const CalibrationConfig& known = scenario.calibration;
+  ConditionSettings condition;
+  resolve_lengths(plan, scenario.digitizer.sample_rate_mhz, condition);
+  if ((plan.level_vem && !known.height_counts_per_vem) || (plan.sum_vem && !known.area_counts_per_vem)) return;
+  resolve_levels(plan, {{}, known.height_counts_per_vem, known.area_counts_per_vem}, scenario.digitizer.channels,
+                 condition);
 }
 
 }  // namespace
@@ -184,10 +205,14 @@ Table trigger_table() {
                       Scenario& scenario) {
     P plan;
     read_keys(context, keys, toml, full_name, plan);
-    const KeyPlace at = context.at(full_name, toml);
-    plan.place = at.place;
-    check_keys_of_kind(at, context, toml, plan.kind);
-    check_against_digitizer(at, plan, scenario);
+    const TableView at{context, &toml, full_name};
+    plan.place = at.whole().place;
+    for (const auto& [key, node] : toml) plan.places[std::string(key.str())] = at.at(std::string(key.str())).place;
+    refuse_keys_of_other_kinds(at, plan.kind);
+    expect_one_of_each_pair(at, plan.kind);
+    check_against_digitizer(at, plan, scenario.digitizer.channels);
+    check_rearm(at, plan);
+    check_resolved(plan, scenario);
     scenario.triggers.push_back(std::move(plan));
   };
   return table;
