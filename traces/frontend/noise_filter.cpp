@@ -41,7 +41,9 @@ std::vector<double> blend(std::vector<double> shorter, const std::vector<double>
 
 }  // namespace
 
-double tap_correlation(const std::vector<double>& taps, std::size_t lag) { return product(taps, lag) / product(taps, 0); }
+double tap_correlation(const std::vector<double>& taps, std::size_t lag) {
+  return product(taps, lag) / product(taps, 0);
+}
 
 std::vector<double> noise_taps(double correlation) {
   CISTERN_ASSERT(correlation >= 0 && correlation <= noise_correlation_max);

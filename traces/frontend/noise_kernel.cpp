@@ -23,7 +23,8 @@ void for_groups(const PhiloxStream& stream, std::uint32_t first_group, Value* ou
   for (std::size_t at = 0; at < size; at += noise_group) {
     const std::uint32_t draw = (first_group + static_cast<std::uint32_t>(at / noise_group)) * 16;
     for (std::uint32_t lane = 0; lane < 16; ++lane) {
-      const auto words = philox4x32_10({draw + lane, stream.counter[0], stream.counter[1], stream.counter[2]}, stream.key);
+      const auto words =
+          philox4x32_10({draw + lane, stream.counter[0], stream.counter[1], stream.counter[2]}, stream.key);
       for (std::size_t j = 0; j < 4; ++j) store(words[j], out + at + 16 * j + lane);
     }
   }
@@ -41,7 +42,8 @@ void write_normals(const PhiloxStream& stream, std::uint32_t first_group, float*
 void filter(const float* taps, std::size_t tap_count, const float* white, float* out, std::size_t size) {
   for (std::size_t i = 0; i < size; ++i) {
     float sum = taps[0] * white[i];
-    for (std::size_t k = 1; k < tap_count; ++k) sum = sum + taps[k] * white[static_cast<std::ptrdiff_t>(i) - static_cast<std::ptrdiff_t>(k)];
+    for (std::size_t k = 1; k < tap_count; ++k)
+      sum = sum + taps[k] * white[static_cast<std::ptrdiff_t>(i) - static_cast<std::ptrdiff_t>(k)];
     out[i] = sum;
   }
 }
@@ -82,7 +84,8 @@ HWY_INLINE WordVector merge(WideVector even, WideVector odd) {
 }
 
 template <typename Value, typename Store>
-HWY_INLINE void for_groups(const PhiloxStream& stream, std::uint32_t first_group, Value* out, std::size_t size, Store store) {
+HWY_INLINE void for_groups(const PhiloxStream& stream, std::uint32_t first_group, Value* out, std::size_t size,
+                           Store store) {
   const Words d;
   const hn::RepartitionToWide<Words> wide;
   const std::size_t lanes = hn::Lanes(d);
@@ -106,7 +109,8 @@ HWY_INLINE void for_groups(const PhiloxStream& stream, std::uint32_t first_group
 }
 
 void write_words(const PhiloxStream& stream, std::uint32_t first_group, std::uint32_t* out, std::size_t size) {
-  for_groups(stream, first_group, out, size, [](WordVector words, std::uint32_t* to) HWY_ATTR { hn::StoreU(words, Words(), to); });
+  for_groups(stream, first_group, out, size,
+             [](WordVector words, std::uint32_t* to) HWY_ATTR { hn::StoreU(words, Words(), to); });
 }
 
 /// normal_of, lane by lane.
@@ -114,15 +118,18 @@ HWY_INLINE void store_normals(const NormalTable& table, WordVector words, float*
   const Words d;
   const hn::RebindToSigned<Words> integers;
   const hn::RebindToFloat<Words> floats;
-  const auto tail = hn::Add(hn::ConvertTo(floats, hn::BitCast(integers, hn::ShiftRight<1>(words))), hn::Set(floats, 0.5F));
-  const auto cell = hn::Sub(hn::ShiftRight<NormalTable::mantissa_shift>(hn::BitCast(d, tail)), hn::Set(d, NormalTable::first_cell));
+  const auto tail =
+      hn::Add(hn::ConvertTo(floats, hn::BitCast(integers, hn::ShiftRight<1>(words))), hn::Set(floats, 0.5F));
+  const auto cell =
+      hn::Sub(hn::ShiftRight<NormalTable::mantissa_shift>(hn::BitCast(d, tail)), hn::Set(d, NormalTable::first_cell));
   const auto size = hn::GatherIndex(floats, table.size.data(), hn::BitCast(integers, cell));
   hn::StoreU(hn::Xor(size, hn::BitCast(floats, hn::ShiftLeft<31>(words))), floats, to);
 }
 
 void write_normals(const PhiloxStream& stream, std::uint32_t first_group, float* out, std::size_t size) {
   const NormalTable& table = normal_table();
-  for_groups(stream, first_group, out, size, [&table](WordVector words, float* to) HWY_ATTR { store_normals(table, words, to); });
+  for_groups(stream, first_group, out, size,
+             [&table](WordVector words, float* to) HWY_ATTR { store_normals(table, words, to); });
 }
 
 void filter(const float* taps, std::size_t tap_count, const float* white, float* out, std::size_t size) {
@@ -131,7 +138,8 @@ void filter(const float* taps, std::size_t tap_count, const float* white, float*
   std::size_t i = 0;
   for (; i + lanes <= size; i += lanes) {
     auto sum = hn::Mul(hn::Set(d, taps[0]), hn::LoadU(d, white + i));
-    for (std::size_t k = 1; k < tap_count; ++k) sum = hn::Add(sum, hn::Mul(hn::Set(d, taps[k]), hn::LoadU(d, white + i - k)));
+    for (std::size_t k = 1; k < tap_count; ++k)
+      sum = hn::Add(sum, hn::Mul(hn::Set(d, taps[k]), hn::LoadU(d, white + i - k)));
     hn::StoreU(sum, d, out + i);
   }
   for (; i < size; ++i) {

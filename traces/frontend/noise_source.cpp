@@ -17,8 +17,9 @@ constexpr std::size_t history = 16;
 static_assert(noise_taps_max - 1 <= history && history <= noise_group);
 
 PhiloxStream stream_of(std::uint64_t campaign_seed, Purpose purpose, std::uint64_t index) {
-  return {{static_cast<std::uint32_t>(index), static_cast<std::uint32_t>(index >> 32), static_cast<std::uint32_t>(purpose)},
-          {static_cast<std::uint32_t>(campaign_seed), static_cast<std::uint32_t>(campaign_seed >> 32)}};
+  return {
+      {static_cast<std::uint32_t>(index), static_cast<std::uint32_t>(index >> 32), static_cast<std::uint32_t>(purpose)},
+      {static_cast<std::uint32_t>(campaign_seed), static_cast<std::uint32_t>(campaign_seed >> 32)}};
 }
 
 }  // namespace

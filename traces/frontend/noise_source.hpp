@@ -26,7 +26,8 @@ class NoiseSource {
   void write(Purpose purpose, std::uint64_t index, std::int64_t first, std::span<float> out) const;
 
  private:
-  void write_in_block(Purpose purpose, std::uint64_t index, std::int64_t block, std::size_t first, std::span<float> out) const;
+  void write_in_block(Purpose purpose, std::uint64_t index, std::int64_t block, std::size_t first,
+                      std::span<float> out) const;
   std::vector<float> taps_;  ///< in counts
   std::uint64_t campaign_seed_;
 };

@@ -8,7 +8,8 @@ namespace {
 constexpr double half = 0x1p31;  // the tail probability 1/2
 
 double start_of(std::size_t cell) {
-  return std::bit_cast<float>((static_cast<std::uint32_t>(cell) + NormalTable::first_cell) << NormalTable::mantissa_shift);
+  return std::bit_cast<float>((static_cast<std::uint32_t>(cell) + NormalTable::first_cell)
+                              << NormalTable::mantissa_shift);
 }
 
 double density_at(double tail) {

@@ -15,8 +15,8 @@ namespace cistern {
 struct NormalTable {
   static constexpr int cell_bits = 8;
   static constexpr int mantissa_shift = 23 - cell_bits;
-  static constexpr std::uint32_t first_cell = 126U << cell_bits;       // of 0.5F
-  static constexpr std::size_t cells = std::size_t{33} << cell_bits;   // 0.5 to 2^31 and what it rounds to
+  static constexpr std::uint32_t first_cell = 126U << cell_bits;      // of 0.5F
+  static constexpr std::size_t cells = std::size_t{33} << cell_bits;  // 0.5 to 2^31 and what it rounds to
   alignas(64) std::array<float, cells> size;
 };
 [[nodiscard]] const NormalTable& normal_table();
@@ -25,7 +25,8 @@ struct NormalTable {
 /// exponent and leading mantissa bits number the cells.
 [[nodiscard]] inline float normal_of(const NormalTable& table, std::uint32_t word) {
   const float tail = static_cast<float>(static_cast<std::int32_t>(word >> 1U)) + 0.5F;
-  const std::uint32_t cell = (std::bit_cast<std::uint32_t>(tail) >> NormalTable::mantissa_shift) - NormalTable::first_cell;
+  const std::uint32_t cell =
+      (std::bit_cast<std::uint32_t>(tail) >> NormalTable::mantissa_shift) - NormalTable::first_cell;
   return std::bit_cast<float>(std::bit_cast<std::uint32_t>(table.size[cell]) ^ (word << 31U));
 }
 

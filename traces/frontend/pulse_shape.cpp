@@ -32,8 +32,8 @@ PulseShape::PulseShape(const FrontendConfig& config, double sample_rate_mhz) {
   for (std::int64_t phase = 0; phase < phases; ++phase) {
     for (std::size_t i = 0; i < length_; ++i) {
       const double samples_after = static_cast<double>(i) - static_cast<double>(phase) / phases;
-      counts_.push_back(static_cast<float>(
-          scale * shaped_pulse(samples_after * sample_ns, config.shaping_time_ns, integrations)));
+      counts_.push_back(
+          static_cast<float>(scale * shaped_pulse(samples_after * sample_ns, config.shaping_time_ns, integrations)));
     }
   }
 }
@@ -45,7 +45,8 @@ void PulseShape::add(double time, float charge, std::span<float> samples) const 
   const std::int64_t start = step >> 4;  // floor of a division by the phases
   const auto phase = static_cast<std::size_t>(step & (phases - 1));
   const auto first = std::max<std::int64_t>(0, -start);
-  const auto last = std::min<std::int64_t>(static_cast<std::int64_t>(length_), static_cast<std::int64_t>(samples.size()) - start);
+  const auto last =
+      std::min<std::int64_t>(static_cast<std::int64_t>(length_), static_cast<std::int64_t>(samples.size()) - start);
   const float* const shape = counts_.data() + phase * length_;
   float* const to = samples.data();
   for (std::int64_t i = first; i < last; ++i) to[start + i] += charge * shape[i];

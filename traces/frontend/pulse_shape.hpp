@@ -24,7 +24,7 @@ class PulseShape {
   void add(double time, float charge, std::span<float> samples) const;
 
   [[nodiscard]] std::size_t length() const noexcept { return length_; }  ///< samples it can touch
-  [[nodiscard]] double area_counts() const;                             ///< sum over all samples, mean charge
+  [[nodiscard]] double area_counts() const;                              ///< sum over all samples, mean charge
 
  private:
   std::size_t length_;

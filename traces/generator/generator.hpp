@@ -45,15 +45,14 @@ class TraceGenerator {
 
   /// Dense background, samples [first_sample, first_sample + samples) of the station's live time.
   /// However the live time is cut into calls, the samples are the same.
-  void make_background(std::uint32_t station, std::int64_t first_sample, std::size_t samples,
-                       Waveform& waveform) const;
+  void make_background(std::uint32_t station, std::int64_t first_sample, std::size_t samples, Waveform& waveform) const;
 
   /// A trace with one test signal and noise but no background particles. The first light of the
   /// signal's first particle falls at `onset_sample` (within one sample).
   /// \param number  the signal's number: same number, same trace
   /// \return the mean number of photo-electrons (all tubes) that the signal was given
-  double make_signal(const TestSignal& signal, std::uint64_t number, std::size_t samples,
-                     std::int64_t onset_sample, Waveform& waveform) const;
+  double make_signal(const TestSignal& signal, std::uint64_t number, std::size_t samples, std::int64_t onset_sample,
+                     Waveform& waveform) const;
 
   /// A trace of one vertical muon through the centre of the tank, without noise, for calibration.
   void make_vertical_muon(std::uint64_t number, std::size_t samples, std::int64_t onset_sample,

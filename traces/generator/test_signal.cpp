@@ -71,7 +71,8 @@ class Particles {
 
 double photo_electrons_per_vem(const TankConfig& tank) { return tank.photo_electrons_per_vem_and_tube * tank.tubes; }
 
-std::vector<LightSource> draw_light_sources(const TestSignal& signal, const GeneratorConfig& config, RandomStream& stream) {
+std::vector<LightSource> draw_light_sources(const TestSignal& signal, const GeneratorConfig& config,
+                                            RandomStream& stream) {
   CISTERN_ASSERT(signal.size_vem > 0 && signal.spread_ns >= 0);
   Particles particles(config, stream);
   switch (signal.kind) {

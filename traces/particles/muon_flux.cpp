@@ -15,7 +15,8 @@ double production_cos_zenith(double cos_zenith) {
   constexpr double p3 = 0.958633;
   constexpr double p4 = 0.0407253;
   constexpr double p5 = 0.817285;
-  const double above = cos_zenith * cos_zenith + p1 * p1 + p2 * std::pow(cos_zenith, p3) + p4 * std::pow(cos_zenith, p5);
+  const double above =
+      cos_zenith * cos_zenith + p1 * p1 + p2 * std::pow(cos_zenith, p3) + p4 * std::pow(cos_zenith, p5);
   return std::sqrt(above / (1 + p1 * p1 + p2 + p4));
 }
 

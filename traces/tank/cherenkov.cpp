@@ -23,8 +23,8 @@ double cherenkov_relative_yield(double beta, double refractive_index) {
 double cherenkov_photons_per_m(double beta, double refractive_index, double from_nm, double to_nm) {
   constexpr double fine_structure = 1 / 137.035999084;
   constexpr double per_m_from_per_nm = 1e9;
-  return 2 * std::numbers::pi * fine_structure * cherenkov_sin2(beta, refractive_index) *
-         (1 / from_nm - 1 / to_nm) * per_m_from_per_nm;
+  return 2 * std::numbers::pi * fine_structure * cherenkov_sin2(beta, refractive_index) * (1 / from_nm - 1 / to_nm) *
+         per_m_from_per_nm;
 }
 
 }  // namespace cistern

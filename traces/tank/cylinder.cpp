@@ -61,9 +61,7 @@ Track draw_track(const Cylinder& water, double cos_zenith, RandomStream& stream)
   return {entry, direction, water.way_to_wall_m(entry, direction)};
 }
 
-Track vertical_central_track(const Cylinder& water) {
-  return {{0, 0, water.depth_m}, {0, 0, -1}, water.depth_m};
-}
+Track vertical_central_track(const Cylinder& water) { return {{0, 0, water.depth_m}, {0, 0, -1}, water.depth_m}; }
 
 Track draw_vertical_track(const Cylinder& water, RandomStream& stream) {
   return {draw_point_of_disc(water.radius_m, water.depth_m, stream), {0, 0, -1}, water.depth_m};

@@ -25,9 +25,9 @@ double mean_squared_chord(const Cylinder& water, const Vector3& point, const Vec
       const double azimuth = 2 * std::numbers::pi * middle_of(k);
       const double u = sine * std::cos(azimuth);
       const double v = sine * std::sin(azimuth);
-      const double way = water.way_to_wall_m(point, {cosine * normal.x + u * along.x + v * across.x,
-                                                     cosine * normal.y + u * along.y + v * across.y,
-                                                     cosine * normal.z + u * along.z + v * across.z});
+      const double way = water.way_to_wall_m(
+          point, {cosine * normal.x + u * along.x + v * across.x, cosine * normal.y + u * along.y + v * across.y,
+                  cosine * normal.z + u * along.z + v * across.z});
       sum += way * way;
     }
   }

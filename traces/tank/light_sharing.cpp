@@ -21,8 +21,8 @@ std::vector<Vector3> tube_places(const TankConfig& tank) {
   std::vector<Vector3> places;
   for (std::int32_t t = 0; t < tank.tubes; ++t) {
     const double azimuth = 2 * std::numbers::pi * (t + 0.5) / tank.tubes;
-    places.push_back({tank.tube_circle_radius_m * std::cos(azimuth), tank.tube_circle_radius_m * std::sin(azimuth),
-                      tank.depth_m});
+    places.push_back(
+        {tank.tube_circle_radius_m * std::cos(azimuth), tank.tube_circle_radius_m * std::sin(azimuth), tank.depth_m});
   }
   return places;
 }

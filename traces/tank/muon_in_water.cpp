@@ -13,7 +13,7 @@
 namespace cistern {
 namespace {
 
-constexpr double muon_mass_mev = 105.6583755;    // Particle Data Group
+constexpr double muon_mass_mev = 105.6583755;     // Particle Data Group
 constexpr double electron_mass_mev = 0.51099895;  // Particle Data Group
 constexpr double kinetic_min_mev = 1;             // 0.005 cm from rest
 constexpr double kinetic_max_mev = 1e7;
@@ -37,7 +37,15 @@ double density_effect(double beta_gamma) {
   return x >= x1 ? far : far + a * std::pow(x1 - x, k);
 }
 
-/// Position of `x` in rising `nodes`, interpolated linearly in `values`.
+/// Photons radiated by the electrons that are hit, in units of K Z/A: Groom, Mokhov, Striganov 2001,
+/// from memory. Half a per cent at 4 GeV.
+double electron_bremsstrahlung(double gamma, double largest_mev) {
+  constexpr double fine_structure = 1 / 137.035999084;
+  const double hardest = std::log(2 * largest_mev / electron_mass_mev);
+  return fine_structure / (4 * std::numbers::pi) * (std::log(2 * gamma) - hardest / 3) * hardest * hardest;
+}
+
+/// The value at `x`, on straight lines between the points (`at`, `values`); `at` rises.
 double interpolate(const std::vector<double>& at, const std::vector<double>& values, double x) {
   const auto above = std::upper_bound(at.begin() + 1, at.end() - 1, x);
   const auto i = static_cast<std::size_t>(above - at.begin());
@@ -59,7 +67,9 @@ double muon_stopping_power(double kinetic_mev) {
       2 * electron_mass_mev * beta_gamma2 / (1 + 2 * gamma * mass_ratio + mass_ratio * mass_ratio);
   const double logarithm =
       0.5 * std::log(2 * electron_mass_mev * beta_gamma2 * largest_mev / (excitation_mev * excitation_mev));
-  return k_mev_cm2 * charge_over_mass / beta2 * (logarithm - beta2 - 0.5 * density_effect(std::sqrt(beta_gamma2)));
+  const double spin = largest_mev / (gamma * muon_mass_mev);
+  const double bethe = (logarithm - beta2 - 0.5 * density_effect(std::sqrt(beta_gamma2)) + spin * spin / 8) / beta2;
+  return k_mev_cm2 * charge_over_mass * (bethe + electron_bremsstrahlung(gamma, largest_mev));
 }
 
 MuonInWater::MuonInWater() {

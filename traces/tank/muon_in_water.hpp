@@ -6,8 +6,9 @@
 namespace cistern {
 
 /// Mean electronic energy loss of a muon in water, MeV cm^2/g: Bethe with the density effect, mean
-/// excitation energy 75 eV and Sternheimer's parameters for water as in Groom, Mokhov and Striganov
-/// 2001. \param kinetic_mev >= 1; radiation, some per cent above 100 GeV, is left out
+/// excitation energy 75 eV and Sternheimer's parameters for water, all as in Groom, Mokhov and
+/// Striganov 2001. The muon's own radiation, which matters above 100 GeV, is left out.
+/// \param kinetic_mev >= 1
 [[nodiscard]] double muon_stopping_power(double kinetic_mev);
 
 /// Range and light of muons, tabulated. Immutable once made.
