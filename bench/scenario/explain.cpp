@@ -62,9 +62,9 @@ constexpr std::string_view manual_head = R"(# Scenario reference
 A scenario is a TOML file. This page is generated from the lists that the program checks scenarios with;
 `cistern explain KEY` prints the same. Values carry their units in their names. A per-channel value is one number for
 all channels or a list with one per channel. Any key can be overridden on the command line:
-`--set trigger.long.majority=3` (entries of a list go by their `name`), `--set requirements.quiet.at_most=40`. Values are
-TOML, so a text keeps its quotes: `--set 'trigger.long.role="candidate"'`. All tables are checked whatever the command;
-the first fault is reported, in one line. Paths are relative to the scenario.
+`--set trigger.long.majority=3` (entries of a list go by their `name`), `--set requirements.quiet.at_most=40`. Values
+are TOML, so a text keeps its quotes: `--set 'trigger.long.role="candidate"'`. All tables are checked whatever the
+command; the first fault is reported, in one line. Paths are relative to the scenario.
 
 A scenario with only `[digitizer]` and `[[trigger]]` is enough for `replay` and for the logic part of `qualify`:
 

@@ -62,7 +62,8 @@ void reject(const KeyPlace& at, const toml::node& node, const std::string& expec
 
 std::string text_of(const toml::node& node) {
   std::ostringstream stream;
-  stream << toml::toml_formatter(node);
+  const auto flags = toml::toml_formatter::default_flags & ~toml::format_flags::allow_literal_strings;
+  stream << toml::toml_formatter(node, flags);  // quotes as in the expectation beside it
   return shortened(one_line(stream.str()), longest_shown);
 }
 
