@@ -37,7 +37,7 @@ OverCondition::OverCondition(const ConditionSettings& settings)
 
 void OverCondition::reset() {
   for (Channel& channel : channels_) {
-    std::fill_n(channel.bits.begin(), history_words_ + 1, 0);
+    std::fill_n(channel.bits.begin(), history_words_, 0);
     channel.count = 0;
     channel.any = false;
   }

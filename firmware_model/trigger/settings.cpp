@@ -8,12 +8,14 @@ namespace cistern {
 namespace {
 
 constexpr std::int32_t longest_reach = 65'536;
+constexpr std::int32_t highest_code = 32'767;  // 15 bits
 
 bool in_range(std::int64_t value, std::int64_t low, std::int64_t high) { return value >= low && value <= high; }
 
 void assert_valid_condition(const ConditionSettings& condition, std::size_t channels) {
   CISTERN_ASSERT(in_range(static_cast<std::int64_t>(channels), 1, 16));
   CISTERN_ASSERT(condition.baseline_counts.size() == channels && condition.channel_enabled.size() == channels);
+  for (const std::int32_t baseline : condition.baseline_counts) CISTERN_ASSERT(in_range(baseline, 0, highest_code));
   CISTERN_ASSERT(in_range(condition.majority, 1, static_cast<std::int64_t>(channels)));
   if (condition.kind == TriggerKind::BoxcarSum) {
     CISTERN_ASSERT(condition.sum_counts.size() == channels);

@@ -20,7 +20,7 @@ enum class Rearm {
 /// All per-channel vectors have one entry per digitizer channel (1 to 16).
 struct ConditionSettings {
   TriggerKind kind{TriggerKind::Threshold};
-  std::vector<std::int32_t> baseline_counts;
+  std::vector<std::int32_t> baseline_counts;  ///< the code of no signal, 0 to 32,767
   std::vector<bool> channel_enabled;          ///< the mask; a disabled channel never counts
   std::vector<std::int32_t> level_counts;     ///< above baseline, equal is over (not boxcar_sum)
   std::int32_t window_samples{1};             ///< time_over_threshold, 1 to 65,536

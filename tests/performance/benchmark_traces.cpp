@@ -46,4 +46,10 @@ CodesView BenchmarkTraces::block(std::size_t number) const {
           benchmark_block_samples, benchmark_block_samples};
 }
 
+std::size_t BenchmarkTraces::next_blocks(std::size_t count) const {
+  const std::size_t first = next_;
+  next_ = (next_ + count) % blocks_;
+  return first;
+}
+
 }  // namespace cistern

@@ -24,12 +24,14 @@ enum class Activity {
   Alternating,  ///< every second sample over: the most changes a word can have
 };
 
-/// Number of samples at or above the level / all samples is what Activity says; the seed is fixed.
+/// The same codes every time.
 class BenchmarkTraces {
  public:
   BenchmarkTraces(Activity activity, std::size_t blocks);
   [[nodiscard]] std::size_t blocks() const noexcept { return blocks_; }
   [[nodiscard]] CodesView block(std::size_t number) const;
+  /// All blocks in turns of `count`, so that what a row reads has left the caches since it was read last.
+  [[nodiscard]] std::size_t next_blocks(std::size_t count) const;
   [[nodiscard]] std::int64_t clocks() const noexcept {
     return static_cast<std::int64_t>(blocks_ * benchmark_block_samples);
   }
@@ -37,6 +39,7 @@ class BenchmarkTraces {
 
  private:
   std::size_t blocks_;
+  mutable std::size_t next_{0};
   std::vector<std::int16_t> codes_;
 };
 

@@ -18,7 +18,8 @@ struct SpeedRow {
 /// Seconds that `work` takes.
 [[nodiscard]] double seconds_of(const std::function<void()>& work);
 
-/// Runs the rows `rounds` times in turns and prints, for each, its best speed and the ratio to the first row.
+/// Runs the rows in turns, at most `rounds` times, a slow one until it has used up its share of the time. Prints the
+/// best speed of each and its ratio to the first row.
 void print_speeds(const std::vector<SpeedRow>& rows, int rounds);
 
 }  // namespace cistern

@@ -146,6 +146,7 @@ TEST(Settings, out_of_range_are_a_bug) {
   EXPECT_DEATH(broken([](auto& s) { s.condition.min_samples_over = 5; }), "min_samples_over");
   EXPECT_DEATH(broken([](auto& s) { s.condition.window_samples = 65'537; }), "window_samples");
   EXPECT_DEATH(broken([](auto& s) { s.condition.level_counts.pop_back(); }), "level_counts");
+  EXPECT_DEATH(broken([](auto& s) { s.condition.baseline_counts[1] = 32'768; }), "baseline");
   EXPECT_DEATH(broken([](auto& s) { s.firing.prescale = 0; }), "prescale");
   EXPECT_DEATH(broken([](auto& s) { s.firing.rearm = Rearm::Level; }), "rearm");
 }
