@@ -37,13 +37,27 @@ ReportPoint efficiency_point(double x, const Subject& subject, const PointRespon
   return {x, static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1)), limits.low, limits.high};
 }
 
+std::string station_name(const Subject& set) { return set.name == "candidate" ? "station with the candidate" : "station in service"; }
+
+/// Without triggers that make up a whole station: their line would lie on its line.
+std::vector<Subject> subjects_to_draw(const StationPlan& plan) {
+  auto subjects = subjects_of(plan.triggers);
+  std::vector<Subject> drawn;
+  for (const Subject& subject : subjects) {
+    const bool is_whole_station = !subject.is_set && std::any_of(subjects.begin(), subjects.end(), [&](const Subject& other) {
+      return other.is_set && other.members == subject.members;
+    });
+    if (!is_whole_station) drawn.push_back(subject);
+  }
+  return drawn;
+}
+
 ReportChart efficiency_chart(const EfficiencyRun& run, const StationPlan& plan, const std::vector<std::size_t>& along, SignalAxis axis) {
   ReportChart chart;
   chart.y = {"efficiency", AxisScale::Linear, 0, 1};
   chart.note = "Share of the placed signals on which the subject fires. Bars are exact 95 % limits (Clopper and Pearson).";
-  for (const Subject& subject : subjects_of(plan.triggers)) {
-    ReportSeries series{subject.is_set ? "station, " + subject.name : subject.name, {}};
-    std::replace(series.name.begin(), series.name.end(), '_', ' ');
+  for (const Subject& subject : subjects_to_draw(plan)) {
+    ReportSeries series{subject.is_set ? station_name(subject) : subject.name, {}};
     for (const std::size_t p : along) series.points.push_back(efficiency_point(value_on(axis, run.points()[p]), subject, run.responses(p)));
     chart.series.push_back(std::move(series));
   }
@@ -127,12 +141,8 @@ ReportTrace example_trace(const QualifyResults& results, const Subject& finds, c
   const Codes codes = run.codes_of(example.point, example.index);
   const std::int64_t onset = run.frame().onset;
   ReportTrace trace;
-  const auto spaced = [](std::string name) {
-    std::replace(name.begin(), name.end(), '_', ' ');
-    return name;
-  };
-  trace.heading = fmt::format("A signal that only the station {} finds", finds.name == "candidate" ? "with the candidate" : "in service");
-  trace.note = fmt::format("{}, signal {}: {} fires; {} does not.", run.points()[example.point].condition, example.index, trigger.name, spaced(misses.name));
+  trace.heading = fmt::format("A signal that only the {} finds", station_name(finds));
+  trace.note = fmt::format("{}, signal {}: {} fires; the {} does not.", run.points()[example.point].condition, example.index, trigger.name, station_name(misses));
   trace.sample_rate_mhz = results.plan.digitizer.sample_rate_mhz;
   trace.first_sample = std::max<std::int64_t>(0, onset - shown_before);
   const auto last = std::min<std::int64_t>(static_cast<std::int64_t>(codes.samples()), onset + shown_after);

@@ -27,11 +27,14 @@ function axisOption(axis, values, name) {
   if (isLog(axis) && usable.length > 0) {
     const low = Math.min(...usable);
     const high = Math.max(...usable);
-    // Less than a decade: a linear axis has better ticks.
-    if (high / low < 6 && axis.low === null) {
-      option.type = 'value';
-      option.min = Number((low * 0.9).toPrecision(2));
-      option.max = Number((high * 1.1).toPrecision(2));
+    if (name === 'x') {
+      // Measured places are few: they are the ticks.
+      option.min = low * 0.85;
+      option.max = high * 1.18;
+      const places = [...new Set(usable)].sort((a, b) => a - b);
+      option.axisTick.customValues = places;
+      option.axisLabel.customValues = places;
+      option.splitLine = { show: false };
     }
   }
   return option;
@@ -96,6 +99,6 @@ export function chartOption(chart) {
     },
     xAxis: axisOption(chart.x, xs, 'x'),
     yAxis: axisOption(chart.y, ys, 'y'),
-    series: [...limits, ...lines],
+    series: [...lines, ...limits],
   };
 }
