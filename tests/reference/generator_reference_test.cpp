@@ -11,6 +11,7 @@
 #include "traces/generator/generator.hpp"
 #include "traces/particles/muon_flux.hpp"
 #include "traces/tank/cylinder.hpp"
+#include "traces/tank/light_decay.hpp"
 
 namespace cistern {
 namespace {
@@ -100,6 +101,31 @@ TEST(GeneratorReference, vertical_muons_have_the_configured_photo_electrons_with
   const double variance = squares / muons - mean * mean;
   check_near("configured", "mean photo-electrons of one VEM in one tube", 55, mean, 4 * std::sqrt(55.0 / muons));
   check_near("Poisson", "their variance", 55, variance, 4 * 55 * std::sqrt((2 + 1 / 55.0) / muons));
+}
+
+TEST(GeneratorReference, tail_of_the_mean_pulse_decays_as_the_light) {
+  const GeneratorConfig config;
+  const TraceGenerator generator(config, seed);
+  constexpr int muons = 4000;
+  constexpr std::int64_t onset = 50;
+  // From 200 ns on the shaping (12 ns) and the direct light have died out.
+  double early = 0;  // 200 to 300 ns
+  double late = 0;   // 300 to 400 ns
+  Waveform waveform;
+  for (std::uint64_t i = 0; i < muons; ++i) {
+    generator.make_vertical_muon(i, 200, onset, waveform);
+    for (std::size_t c = 0; c < 4; ++c) {
+      const auto samples = waveform.channel(c);
+      early = std::accumulate(samples.begin() + onset + 20, samples.begin() + onset + 30, early);
+      late = std::accumulate(samples.begin() + onset + 30, samples.begin() + onset + 40, late);
+    }
+  }
+  const double per_photo_electron = PulseShape(config.frontend, 100).area_counts();
+  const double relative_error = std::sqrt(1.1225 * per_photo_electron * (1 / early + 1 / late));
+  const double tau_ns = light_decay_time_ns(config.tank);
+  const double got_ns = 100 / std::log(early / late);
+  check_near("tank size and walls", "decay time of the mean pulse's tail, ns", tau_ns, got_ns,
+             4 * relative_error * tau_ns * tau_ns / 100);
 }
 
 TEST(GeneratorReference, test_signals_have_their_true_size_on_average) {
