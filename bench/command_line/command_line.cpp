@@ -17,7 +17,8 @@
 namespace cistern {
 namespace {
 
-constexpr std::array<std::string_view, 7> commands_to_come{"power", "array", "tune", "sweep", "central", "station", "vectors"};
+constexpr std::array<std::string_view, 7> commands_to_come{"power",   "array",   "tune",   "sweep",
+                                                           "central", "station", "vectors"};
 
 std::vector<std::string> option_names(const CLI::App& app) {
   std::vector<std::string> names;
@@ -41,7 +42,8 @@ const CLI::App& chosen_command(const CLI::App& app) {
 
 std::string full_name(const CLI::App& app, const CLI::App& root) {
   std::string name;
-  for (const CLI::App* at = &app; at != &root; at = at->get_parent()) name = at->get_name() + (name.empty() ? "" : " " + name);
+  for (const CLI::App* at = &app; at != &root; at = at->get_parent())
+    name = at->get_name() + (name.empty() ? "" : " " + name);
   return name;
 }
 
@@ -63,26 +65,34 @@ InputError call_error(const CLI::App& app, const CLI::ParseError& error, const s
   }
   std::string text = error.what();
   std::replace(text.begin(), text.end(), '\n', ' ');
-  return {place, text + (command.get_parent() == nullptr ? "; see `cistern --help`" : fmt::format("; see `{} --help`", place))};
+  return {place, text + (command.get_parent() == nullptr ? "; see `cistern --help`"
+                                                         : fmt::format("; see `{} --help`", place))};
 }
 
 ExitStatus parse_and_run(const std::vector<std::string>& arguments) {
-  if (!arguments.empty() && std::find(commands_to_come.begin(), commands_to_come.end(), arguments.front()) != commands_to_come.end()) {
+  if (!arguments.empty() &&
+      std::find(commands_to_come.begin(), commands_to_come.end(), arguments.front()) != commands_to_come.end()) {
     throw InputError("cistern " + arguments.front(), "not in this version");
   }
   CLI::App app("Cistern qualifies trigger firmware of water-Cherenkov stations before it goes out.", "cistern");
   app.set_version_flag("--version", std::string(version()));
   app.require_subcommand(1);
   app.failure_message({});
-  app.footer("Exit status: 0 done, all requirements met; 1 a requirement not met or undecided; 2 the input or the call is\n"
-             "wrong; 3 an internal or system fault; 130 stopped by Ctrl-C.");
+  app.footer(
+      "Exit status: 0 done, all requirements met; 1 a requirement not met or undecided; 2 the input or the call is\n"
+      "wrong; 3 an internal or system fault; 130 stopped by Ctrl-C.");
   std::function<ExitStatus()> action;
   add_commands(app, action);
   try {
     std::vector<std::string> reversed(arguments.rbegin(), arguments.rend());
     app.parse(reversed);
   } catch (const CLI::CallForHelp& call) {
-    fmt::print("{}", chosen_command(app).help());
+    const CLI::App& command = chosen_command(app);
+    const std::string name = full_name(command, app);
+    const auto own = name.rfind(' ');
+    fmt::print("{}", command.help(name.empty()               ? ""
+                                  : own == std::string::npos ? "cistern"
+                                                             : "cistern " + name.substr(0, own)));
     return ExitStatus::Met;
   } catch (const CLI::CallForVersion&) {
     fmt::print("cistern {}\n", version());

@@ -12,8 +12,8 @@ class App;
 namespace cistern {
 
 void add_commands(CLI::App& app, std::function<ExitStatus()>& action);
-void add_run_commands(CLI::App& app, std::function<ExitStatus()>& action);     ///< qualify, rate, replay
-void add_trace_commands(CLI::App& app, std::function<ExitStatus()>& action);   ///< traces make, convert...
+void add_run_commands(CLI::App& app, std::function<ExitStatus()>& action);    ///< qualify, rate, replay
+void add_trace_commands(CLI::App& app, std::function<ExitStatus()>& action);  ///< traces make, convert...
 void add_explain_command(CLI::App& app, std::function<ExitStatus()>& action);
 
 }  // namespace cistern

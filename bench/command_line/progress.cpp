@@ -48,7 +48,8 @@ void Progress::begin_stage(std::string_view stage, std::int64_t done) {
 }
 
 bool Progress::is_due(std::int64_t done, std::int64_t total) const {
-  const auto interval = style_ == ProgressStyle::Terminal ? Clock::duration(terminal_interval) : Clock::duration(plain_interval);
+  const auto interval =
+      style_ == ProgressStyle::Terminal ? Clock::duration(terminal_interval) : Clock::duration(plain_interval);
   return (total > 0 && done == total) || Clock::now() - last_drawn_ >= interval;
 }
 

@@ -43,6 +43,7 @@ class Progress {
 [[nodiscard]] std::string duration_text(double seconds);
 
 /// What is left at the pace so far: "41 %, 12 s left". \param elapsed_s  since `first_done` units were done
-[[nodiscard]] std::string progress_text(std::int64_t done, std::int64_t total, std::int64_t first_done, double elapsed_s);
+[[nodiscard]] std::string progress_text(std::int64_t done, std::int64_t total, std::int64_t first_done,
+                                        double elapsed_s);
 
 }  // namespace cistern

@@ -69,7 +69,9 @@ ExitStatus run(Experiment experiment, const RunArguments& arguments) {
   std::signal(SIGINT, on_interrupt);
   Progress progress(arguments.quiet ? ProgressStyle::Silent : style_of_standard_error());
   RunOptions options = options_of(arguments);
-  options.advance = [&](std::string_view stage, std::int64_t done, std::int64_t total) { progress.advance(stage, done, total); };
+  options.advance = [&](std::string_view stage, std::int64_t done, std::int64_t total) {
+    progress.advance(stage, done, total);
+  };
   const Stopwatch stopwatch;
   const RunOutcome outcome = experiment(scenario, options);
   progress.finish();
@@ -88,12 +90,23 @@ void add_run_command(CLI::App& app, std::function<ExitStatus()>& action, const s
   CLI::App* command = app.add_subcommand(name, description);
   const auto arguments = std::make_shared<RunArguments>();
   arguments->scenario = add_scenario_arguments(*command);
-  command->add_option("--out", arguments->out, "Run directory: absent, empty, or an earlier run of the same; "
-                                               "cistern-run/" + name + " if not given");
-  arguments->seed_option = command->add_option("--seed", arguments->seed, "Campaign seed; [scenario] seed if not given");
-  command->add_option("--jobs", arguments->jobs, "Worker processes")->check(CLI::Range(1, 256))->capture_default_str();
-  if (name != "rate") command->add_option("--traces", arguments->traces, "Recorded traces: .csv, .npy, .h5 or .hdf5");
-  if (name != "replay") command->add_flag("--quick", arguments->quick, "Fewer signals and less live time: wider limits, sooner");
+  command
+      ->add_option("--out", arguments->out,
+                   "Run directory: absent, empty, or an earlier run of the same; "
+                   "cistern-run/" +
+                       name + " if not given")
+      ->type_name("DIR");
+  arguments->seed_option =
+      command->add_option("--seed", arguments->seed, "Campaign seed; [scenario] seed if not given")->type_name("N");
+  command->add_option("--jobs", arguments->jobs, "Worker processes")
+      ->type_name("N")
+      ->check(CLI::Range(1, 256))
+      ->capture_default_str();
+  if (name != "rate") {
+    command->add_option("--traces", arguments->traces, "Recorded traces: .csv, .npy, .h5 or .hdf5")->type_name("FILE");
+  }
+  if (name != "replay")
+    command->add_flag("--quick", arguments->quick, "Fewer signals and less live time: wider limits, sooner");
   command->add_flag("--quiet", arguments->quiet, "No progress");
   command->add_flag("--json", arguments->json, "Print summary.json on standard output");
   command->callback([&action, experiment, arguments] { action = [=] { return run(experiment, *arguments); }; });
@@ -102,9 +115,12 @@ void add_run_command(CLI::App& app, std::function<ExitStatus()>& action, const s
 }  // namespace
 
 void add_run_commands(CLI::App& app, std::function<ExitStatus()>& action) {
-  add_run_command(app, action, "qualify", "Judge candidate triggers against those in service and the requirements", run_qualify);
-  add_run_command(app, action, "rate", "Background rate of each trigger against its level and its samples over", run_rate);
-  add_run_command(app, action, "replay", "Which triggers fire on recorded traces, where, and by what margin", run_replay);
+  add_run_command(app, action, "qualify", "Judge candidate triggers against those in service and the requirements",
+                  run_qualify);
+  add_run_command(app, action, "rate", "Background rate of each trigger against its level and its samples over",
+                  run_rate);
+  add_run_command(app, action, "replay", "Which triggers fire on recorded traces, where, and by what margin",
+                  run_replay);
 }
 
 }  // namespace cistern

@@ -6,8 +6,11 @@ namespace cistern {
 
 std::shared_ptr<ScenarioArguments> add_scenario_arguments(CLI::App& command) {
   auto arguments = std::make_shared<ScenarioArguments>();
-  command.add_option("SCENARIO", arguments->path, "The scenario file (TOML)")->required();
-  command.add_option("--set", arguments->settings, "Override a scenario key: KEY=VALUE, for example trigger.long.majority=3")
+  command.add_option("SCENARIO", arguments->path, "The scenario file (TOML)")->required()->type_name("FILE");
+  command
+      .add_option("--set", arguments->settings,
+                  "Override a scenario key: KEY=VALUE, for example trigger.long.majority=3")
+      ->type_name("KEY=VALUE")
       ->take_all()
       ->expected(1)
       ->multi_option_policy(CLI::MultiOptionPolicy::TakeAll);

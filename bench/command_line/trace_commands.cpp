@@ -43,15 +43,27 @@ void add_make(CLI::App& traces, std::function<ExitStatus()>& action) {
   CLI::App* command = traces.add_subcommand("make", "Write synthetic traces of a scenario's station");
   const auto a = std::make_shared<Arguments>();
   a->scenario = add_scenario_arguments(*command);
-  command->add_option("--out", a->request.out, "File to write: .csv, .npy, .h5 or .hdf5")->required();
-  command->add_option("--kind", a->kind, "background (stretches one after the other), muon, electromagnetic or shower")->capture_default_str();
-  command->add_option("--size-vem", a->request.size_vem, "True size of a signal, VEM")->capture_default_str();
-  command->add_option("--spread-ns", a->request.spread_ns, "10 to 90 % of a signal's arrival times, ns")->capture_default_str();
-  command->add_option("--traces", a->request.traces, "Number of traces")->capture_default_str();
-  command->add_option("--samples", a->request.samples, "Samples in each trace")->capture_default_str();
-  a->onset_option = command->add_option("--onset-sample", a->onset, "Where a signal starts; a quarter of the trace if not given");
-  a->start_option = command->add_option("--start-ns", a->start_ns, "Start of the first trace, ns since the GPS epoch (HDF5 only)");
-  a->seed_option = command->add_option("--seed", a->request.seed, "Seed; [scenario] seed if not given");
+  command->add_option("--out", a->request.out, "File to write: .csv, .npy, .h5 or .hdf5")
+      ->type_name("FILE")
+      ->required();
+  command->add_option("--kind", a->kind, "background (stretches one after the other), muon, electromagnetic or shower")
+      ->type_name("KIND")
+      ->capture_default_str();
+  command->add_option("--size-vem", a->request.size_vem, "True size of a signal, VEM")
+      ->type_name("VEM")
+      ->capture_default_str();
+  command->add_option("--spread-ns", a->request.spread_ns, "10 to 90 % of a signal's arrival times, ns")
+      ->type_name("NS")
+      ->capture_default_str();
+  command->add_option("--traces", a->request.traces, "Number of traces")->type_name("N")->capture_default_str();
+  command->add_option("--samples", a->request.samples, "Samples in each trace")->type_name("N")->capture_default_str();
+  a->onset_option =
+      command->add_option("--onset-sample", a->onset, "Where a signal starts; a quarter of the trace if not given")
+          ->type_name("N");
+  a->start_option =
+      command->add_option("--start-ns", a->start_ns, "Start of the first trace, ns since the GPS epoch (HDF5 only)")
+          ->type_name("NS");
+  a->seed_option = command->add_option("--seed", a->request.seed, "Seed; [scenario] seed if not given")->type_name("N");
   command->callback([a, &action] {
     action = [a] {
       const Scenario scenario = load_scenario(*a->scenario);
@@ -77,13 +89,20 @@ void add_convert(CLI::App& traces, std::function<ExitStatus()>& action) {
   };
   CLI::App* command = traces.add_subcommand("convert", "Convert between CSV, NPY and HDF5 (by the names' endings)");
   const auto a = std::make_shared<Arguments>();
-  command->add_option("IN", a->request.in, "File to read")->required();
-  command->add_option("OUT", a->request.out, "File to write")->required();
-  command->add_option("--sample-rate-mhz", a->sample_rate_mhz, "Where IN does not say it")->check(CLI::PositiveNumber);
-  command->add_option("--bits", a->bits, "Where IN does not say it")->check(CLI::Range(4, 15));
-  command->add_option("--baseline-counts", a->baseline, "Where IN does not say it: one number, or one per channel")->delimiter(',');
-  command->add_option("--selection", a->selection, "unbiased or triggered_by:NAME, where IN does not say it");
-  command->add_option("--live-time-s", a->live_time_s, "Where IN does not say it")->check(CLI::PositiveNumber);
+  command->add_option("IN", a->request.in, "File to read")->type_name("FILE")->required();
+  command->add_option("OUT", a->request.out, "File to write")->type_name("FILE")->required();
+  command->add_option("--sample-rate-mhz", a->sample_rate_mhz, "Where IN does not say it")
+      ->type_name("MHZ")
+      ->check(CLI::PositiveNumber);
+  command->add_option("--bits", a->bits, "Where IN does not say it")->type_name("N")->check(CLI::Range(4, 15));
+  command->add_option("--baseline-counts", a->baseline, "Where IN does not say it: one number, or one per channel")
+      ->type_name("LIST")
+      ->delimiter(',');
+  command->add_option("--selection", a->selection, "unbiased or triggered_by:NAME, where IN does not say it")
+      ->type_name("WORD");
+  command->add_option("--live-time-s", a->live_time_s, "Where IN does not say it")
+      ->type_name("S")
+      ->check(CLI::PositiveNumber);
   command->add_flag("--contiguous", a->request.said.contiguous, "Each trace goes on where the last ended");
   command->callback([a, &action] {
     action = [a] {
@@ -101,10 +120,11 @@ void add_convert(CLI::App& traces, std::function<ExitStatus()>& action) {
 }
 
 void add_describe(CLI::App& traces, std::function<ExitStatus()>& action) {
-  CLI::App* command = traces.add_subcommand("describe", "What is in a trace file: shape, baselines, noise, saturation, spectrum");
+  CLI::App* command =
+      traces.add_subcommand("describe", "What is in a trace file: shape, baselines, noise, saturation, spectrum");
   const auto file = std::make_shared<std::string>();
   const auto json = std::make_shared<bool>(false);
-  command->add_option("FILE", *file, "File to read")->required();
+  command->add_option("FILE", *file, "File to read")->type_name("FILE")->required();
   command->add_flag("--json", *json, "As JSON");
   command->callback([file, json, &action] {
     action = [file, json] {
@@ -119,15 +139,20 @@ void add_describe(CLI::App& traces, std::function<ExitStatus()>& action) {
 }
 
 void add_calibrate(CLI::App& traces, std::function<ExitStatus()>& action) {
-  CLI::App* command = traces.add_subcommand("calibrate", "Counts per VEM of a scenario's station, from simulated vertical muons");
+  CLI::App* command =
+      traces.add_subcommand("calibrate", "Counts per VEM of a scenario's station, from simulated vertical muons");
   const auto scenario = add_scenario_arguments(*command);
   const auto muons = std::make_shared<int>(4000);
   const auto seed = std::make_shared<std::uint64_t>(1);
-  command->add_option("--muons", *muons, "Number of muons")->check(CLI::Range(10, 10'000'000))->capture_default_str();
-  command->add_option("--seed", *seed, "Seed")->capture_default_str();
+  command->add_option("--muons", *muons, "Number of muons")
+      ->type_name("N")
+      ->check(CLI::Range(10, 10'000'000))
+      ->capture_default_str();
+  command->add_option("--seed", *seed, "Seed")->type_name("N")->capture_default_str();
   command->callback([=, &action] {
     action = [=] {
-      for (const std::string& line : calibration_lines(load_scenario(*scenario), *muons, *seed)) fmt::print("{}\n", line);
+      for (const std::string& line : calibration_lines(load_scenario(*scenario), *muons, *seed))
+        fmt::print("{}\n", line);
       return ExitStatus::Met;
     };
   });

@@ -59,13 +59,15 @@ BackgroundRun::BackgroundRun(const StationPlan& plan, const CaptureConfig& captu
 }
 
 std::unique_ptr<LiveObserver> BackgroundRun::observe(std::int64_t unit) const {
-  return std::make_unique<Observer>(without_prescale(plan_.triggers), time_.run_up_start(unit), time_.first_sample(unit));
+  return std::make_unique<Observer>(without_prescale(plan_.triggers), time_.run_up_start(unit),
+                                    time_.first_sample(unit));
 }
 
 void BackgroundRun::prescale(PlacedFiring& firing) {
   const auto trigger = static_cast<std::size_t>(firing.trigger);
   if (firing.status != FiringStatus::Passed) return;
-  if (++passed_hold_off_[trigger] % plan_.triggers[trigger].firing.prescale != 0) firing.status = FiringStatus::Prescaled;
+  if (++passed_hold_off_[trigger] % plan_.triggers[trigger].firing.prescale != 0)
+    firing.status = FiringStatus::Prescaled;
 }
 
 void BackgroundRun::capture(const PlacedFiring& firing) {
@@ -104,7 +106,8 @@ void BackgroundRun::merge(std::int64_t unit, std::string_view result, const Firi
   }
   blocks_joined_ = time_.end_block(unit);
   for (const TriggerSet set : trigger_sets) {
-    sets_[static_cast<std::size_t>(set)].dead_samples = books_[static_cast<std::size_t>(set)].dead_samples(time_.end_sample(unit));
+    sets_[static_cast<std::size_t>(set)].dead_samples =
+        books_[static_cast<std::size_t>(set)].dead_samples(time_.end_sample(unit));
   }
 }
 

@@ -20,10 +20,10 @@ namespace cistern {
 
 /// What became of the firings of one station set.
 struct SetTotals {
-  std::int64_t firings{0};      ///< that passed every stage of their trigger
-  std::int64_t captures{0};     ///< each becomes one tag
-  std::int64_t merged{0};       ///< fell inside an open capture
-  std::int64_t lost{0};         ///< no free buffer
+  std::int64_t firings{0};       ///< that passed every stage of their trigger
+  std::int64_t captures{0};      ///< each becomes one tag
+  std::int64_t merged{0};        ///< fell inside an open capture
+  std::int64_t lost{0};          ///< no free buffer
   std::int64_t dead_samples{0};  ///< at which a firing would have been lost
   std::vector<std::int64_t> captures_per_block;
 };
@@ -47,7 +47,7 @@ class BackgroundRun {
   [[nodiscard]] std::unique_ptr<LiveObserver> observe(std::int64_t unit) const;
   void merge(std::int64_t unit, std::string_view result, const FiringSink& sink);
 
-  [[nodiscard]] double live_time_s() const;             ///< joined so far
+  [[nodiscard]] double live_time_s() const;  ///< joined so far
   [[nodiscard]] const LiveTimePlan& time() const noexcept { return time_; }
   [[nodiscard]] const TriggerTotals& totals(std::size_t trigger) const { return triggers_[trigger]; }
   [[nodiscard]] const SetTotals& totals(TriggerSet set) const { return sets_[static_cast<std::size_t>(set)]; }
@@ -62,10 +62,10 @@ class BackgroundRun {
   const StationPlan& plan_;
   LiveTimePlan time_;
   std::int64_t blocks_joined_{0};
-  std::vector<std::int64_t> passed_hold_off_;            ///< per trigger, for the prescale
+  std::vector<std::int64_t> passed_hold_off_;  ///< per trigger, for the prescale
   std::vector<TriggerTotals> triggers_;
   std::array<SetTotals, 2> sets_;
-  std::vector<CaptureBook> books_;                       ///< one per set
+  std::vector<CaptureBook> books_;  ///< one per set
 };
 
 }  // namespace cistern

@@ -23,11 +23,14 @@ class Bench {
   Bench(const ConditionSettings& condition, const DigitizerConfig& digitizer)
       : condition_(condition), largest_(largest_code(digitizer)), channels_(enabled_channels(condition)) {}
 
-  [[nodiscard]] std::int32_t level_code(std::size_t c) const { return condition_.baseline_counts[c] + condition_.level_counts[c]; }
+  [[nodiscard]] std::int32_t level_code(std::size_t c) const {
+    return condition_.baseline_counts[c] + condition_.level_counts[c];
+  }
 
   /// Room for an idle sample below the level and an over one at it, on every channel.
   [[nodiscard]] bool has_room_around_level() const {
-    return std::all_of(channels_.begin(), channels_.end(), [&](std::size_t c) { return level_code(c) >= 1 && level_code(c) <= largest_; });
+    return std::all_of(channels_.begin(), channels_.end(),
+                       [&](std::size_t c) { return level_code(c) >= 1 && level_code(c) <= largest_; });
   }
 
   [[nodiscard]] std::int32_t idle(std::size_t c) const {
@@ -64,7 +67,8 @@ std::vector<std::size_t> run_of(std::size_t first, std::size_t count) {
 }
 
 std::vector<BoundaryStimulus> level_stimuli(const ConditionSettings& condition, const Bench& bench) {
-  const auto enough = static_cast<std::size_t>(condition.kind == TriggerKind::Threshold ? 1 : condition.min_samples_over);
+  const auto enough =
+      static_cast<std::size_t>(condition.kind == TriggerKind::Threshold ? 1 : condition.min_samples_over);
   const std::size_t lead = static_cast<std::size_t>(reach_samples(condition)) + 2;
   const std::size_t samples = 2 * lead + enough;
   const auto at_level = [&](std::size_t c) { return bench.level_code(c); };
@@ -121,9 +125,12 @@ Codes sum_trace(const ConditionSettings& condition, const Bench& bench, std::siz
 std::vector<BoundaryStimulus> sum_stimuli(const ConditionSettings& condition, const Bench& bench) {
   const std::size_t majority = bench.majority();
   std::vector<BoundaryStimulus> stimuli;
-  stimuli.push_back({fmt::format("the sum exactly, on {} channels", majority), true, sum_trace(condition, bench, majority, 0)});
-  stimuli.push_back({fmt::format("the sum less one count, on {} channels", majority), false, sum_trace(condition, bench, majority, 1)});
-  stimuli.push_back({fmt::format("the sum exactly, on {} channels", majority - 1), false, sum_trace(condition, bench, majority - 1, 0)});
+  stimuli.push_back(
+      {fmt::format("the sum exactly, on {} channels", majority), true, sum_trace(condition, bench, majority, 0)});
+  stimuli.push_back({fmt::format("the sum less one count, on {} channels", majority), false,
+                     sum_trace(condition, bench, majority, 1)});
+  stimuli.push_back({fmt::format("the sum exactly, on {} channels", majority - 1), false,
+                     sum_trace(condition, bench, majority - 1, 0)});
   return stimuli;
 }
 
@@ -140,7 +147,8 @@ std::vector<BoundaryStimulus> boundary_stimuli(const ConditionSettings& conditio
   const Bench bench(condition, digitizer);
   if (bench.channels().size() < bench.majority()) return {};
   if (condition.kind == TriggerKind::BoxcarSum) {
-    return sums_have_room(condition, digitizer, bench) ? sum_stimuli(condition, bench) : std::vector<BoundaryStimulus>{};
+    return sums_have_room(condition, digitizer, bench) ? sum_stimuli(condition, bench)
+                                                       : std::vector<BoundaryStimulus>{};
   }
   if (!bench.has_room_around_level()) return {};
   auto stimuli = level_stimuli(condition, bench);
@@ -158,8 +166,8 @@ std::string why_never_true(const ConditionSettings& condition, const DigitizerCo
     return condition.level_counts[c] <= most;
   });
   if (can_count >= condition.majority) return {};
-  return fmt::format("only {} of its channels can reach their level within {} bits, and majority asks for {}", can_count,
-                     digitizer.bits, condition.majority);
+  return fmt::format("only {} of its channels can reach their level within {} bits, and majority asks for {}",
+                     can_count, digitizer.bits, condition.majority);
 }
 
 }  // namespace cistern

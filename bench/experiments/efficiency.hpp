@@ -13,9 +13,9 @@ namespace cistern {
 
 /// One size and spread of one [[signal]].
 struct SignalPoint {
-  std::size_t signal{0};        ///< place in scenario.signals
+  std::size_t signal{0};  ///< place in scenario.signals
   TestSignal test;
-  std::string condition;        ///< in figure names: "muon.3_vem" or "shower.3_vem.400_ns"
+  std::string condition;  ///< in figure names: "muon.3_vem" or "shower.3_vem.400_ns"
 };
 
 /// Every size with every spread of every [[signal]], in scenario order.
@@ -23,8 +23,8 @@ struct SignalPoint {
 
 /// What one trigger made of one signal.
 struct SignalResponse {
-  std::int32_t delay_samples{-1};     ///< onset to first firing inside the match window; -1: none
-  std::int32_t margin{0};             ///< best of the trace (counts or samples), contract of `margins`
+  std::int32_t delay_samples{-1};  ///< onset to first firing inside the match window; -1: none
+  std::int32_t margin{0};          ///< best of the trace (counts or samples), contract of `margins`
   [[nodiscard]] bool fired() const noexcept { return delay_samples >= 0; }
 };
 
@@ -35,8 +35,8 @@ struct PointResponses {
 
 /// Where a test signal lies in its trace, in samples.
 struct SignalFrame {
-  std::int64_t onset{0};        ///< far enough in that no window reaches before the trace
-  std::int64_t match{0};        ///< a firing in [onset, onset + match] belongs to the signal
+  std::int64_t onset{0};  ///< far enough in that no window reaches before the trace
+  std::int64_t match{0};  ///< a firing in [onset, onset + match] belongs to the signal
   std::size_t samples{0};
 };
 [[nodiscard]] SignalFrame signal_frame(const StationPlan& plan, const QualifyConfig& config);

@@ -8,7 +8,9 @@
 namespace cistern {
 namespace {
 
-std::int64_t total(const std::vector<std::int64_t>& counts) { return std::accumulate(counts.begin(), counts.end(), std::int64_t{0}); }
+std::int64_t total(const std::vector<std::int64_t>& counts) {
+  return std::accumulate(counts.begin(), counts.end(), std::int64_t{0});
+}
 
 /// Only the joined blocks: an empty run has counted nothing yet.
 BlockCounts joined_blocks(const std::vector<std::int64_t>& counts, double live_time_s, double block_s) {
@@ -16,16 +18,19 @@ BlockCounts joined_blocks(const std::vector<std::int64_t>& counts, double live_t
   return {{counts.begin(), counts.begin() + joined}, block_s};
 }
 
-void add_set_figures(const BackgroundRun& run, TriggerSet set, double sample_rate_hz, std::vector<MeasuredFigure>& figures) {
+void add_set_figures(const BackgroundRun& run, TriggerSet set, double sample_rate_hz,
+                     std::vector<MeasuredFigure>& figures) {
   const SetTotals& totals = run.totals(set);
   const std::string subject(name_of(set));
   const double live_s = run.live_time_s();
   figures.push_back({"tag_rate." + subject, "Hz", "captures started, each of which becomes one tag",
                      RateBasis{joined_blocks(totals.captures_per_block, live_s, run.time().block_s())}});
-  figures.push_back({"busy_loss." + subject, "", "firings that found no free capture buffer, of those not inside an open capture",
+  figures.push_back({"busy_loss." + subject, "",
+                     "firings that found no free capture buffer, of those not inside an open capture",
                      ProportionBasis{totals.lost, totals.lost + totals.captures}});
-  figures.push_back({"dead_time." + subject, "", "share of live time with no free capture buffer",
-                     PlainBasis{live_s > 0 ? static_cast<double>(totals.dead_samples) / (sample_rate_hz * live_s) : 0}});
+  figures.push_back(
+      {"dead_time." + subject, "", "share of live time with no free capture buffer",
+       PlainBasis{live_s > 0 ? static_cast<double>(totals.dead_samples) / (sample_rate_hz * live_s) : 0}});
 }
 
 /// The scan's points of one trigger against its level, by rising factor.
@@ -45,10 +50,12 @@ std::vector<MeasuredFigure> background_figures(const BackgroundRun& run, const S
   for (std::size_t t = 0; t < plan.triggers.size(); ++t) {
     const auto blocks = joined_blocks(run.totals(t).firings_per_block, run.live_time_s(), run.time().block_s());
     figures.push_back({"background_rate." + plan.triggers[t].name, "Hz",
-                       fmt::format("{} firings in {:.4g} s", total(blocks.counts), run.live_time_s()), RateBasis{blocks}});
+                       fmt::format("{} firings in {:.4g} s", total(blocks.counts), run.live_time_s()),
+                       RateBasis{blocks}});
   }
   for (const TriggerSet set : trigger_sets) {
-    if (!members_of(set, plan.triggers).empty()) add_set_figures(run, set, plan.digitizer.sample_rate_mhz * 1e6, figures);
+    if (!members_of(set, plan.triggers).empty())
+      add_set_figures(run, set, plan.digitizer.sample_rate_mhz * 1e6, figures);
   }
   return figures;
 }
@@ -58,15 +65,16 @@ std::vector<MeasuredFigure> scan_figures(const RateScan& scan, const StationPlan
   for (std::size_t v = 0; v < scan.variants().size(); ++v) {
     const RateVariant& variant = scan.variants()[v];
     const auto& counts = scan.firings_per_block(v);
-    figures.push_back({fmt::format("background_rate.{}.{}", plan.triggers[variant.trigger].name, variant.condition), "Hz",
-                       fmt::format("{} firings", total(counts)), RateBasis{{counts, scan.time().block_s()}}});
+    figures.push_back({fmt::format("background_rate.{}.{}", plan.triggers[variant.trigger].name, variant.condition),
+                       "Hz", fmt::format("{} firings", total(counts)), RateBasis{{counts, scan.time().block_s()}}});
   }
   for (std::size_t t = 0; t < plan.triggers.size(); ++t) {
     const auto slope = level_slope(scan, t);
-    figures.push_back({"rate_slope." + plan.triggers[t].name, "",
-                       slope ? fmt::format("d ln(rate) / d ln(level) at factor 1; standard error {:.2g}", slope->standard_error)
-                             : "not enough firings on both sides of the level",
-                       PlainBasis{slope ? slope->value : std::nan("")}});
+    figures.push_back(
+        {"rate_slope." + plan.triggers[t].name, "",
+         slope ? fmt::format("d ln(rate) / d ln(level) at factor 1; standard error {:.2g}", slope->standard_error)
+               : "not enough firings on both sides of the level",
+         PlainBasis{slope ? slope->value : std::nan("")}});
   }
   return figures;
 }

@@ -31,7 +31,8 @@ void add_rows(const TriggerSettings& trigger, const DigitizerConfig& digitizer, 
 }
 
 /// A walk that lingers around the codes where the condition changes its mind.
-Codes random_codes(const TriggerSettings& trigger, const DigitizerConfig& digitizer, std::uint64_t seed, std::uint64_t index) {
+Codes random_codes(const TriggerSettings& trigger, const DigitizerConfig& digitizer, std::uint64_t seed,
+                   std::uint64_t index) {
   RandomStream stream(seed, Purpose::Demonstration, index);
   const ConditionSettings& condition = trigger.condition;
   Codes codes(condition.baseline_counts.size(), random_samples);
@@ -42,7 +43,8 @@ Codes random_codes(const TriggerSettings& trigger, const DigitizerConfig& digiti
     double offset = 0;
     for (std::int16_t& code : codes.channel(c)) {
       offset += 0.1 * (edge - offset) + stream.uniform(-2, 2) + (stream.uniform() < 0.02 ? stream.uniform(-12, 12) : 0);
-      code = static_cast<std::int16_t>(std::clamp(condition.baseline_counts[c] + static_cast<std::int32_t>(offset), 0, largest_code(digitizer)));
+      code = static_cast<std::int16_t>(
+          std::clamp(condition.baseline_counts[c] + static_cast<std::int32_t>(offset), 0, largest_code(digitizer)));
     }
   }
   return codes;
@@ -64,7 +66,8 @@ LogicAgreement compare(const TriggerSettings& trigger, const Codes& codes) {
   std::vector<Firing> got;
   TriggerKernel kernel(trigger);
   kernel.process(codes.view(), got);
-  LogicAgreement agreement{trigger.name, static_cast<std::int64_t>(codes.samples()), static_cast<std::int64_t>(expected.size()), 0};
+  LogicAgreement agreement{trigger.name, static_cast<std::int64_t>(codes.samples()),
+                           static_cast<std::int64_t>(expected.size()), 0};
   const std::size_t both = std::min(expected.size(), got.size());
   for (std::size_t i = 0; i < both; ++i) agreement.differences += expected[i] == got[i] ? 0 : 1;
   agreement.differences += static_cast<std::int64_t>(std::max(expected.size(), got.size()) - both);

@@ -13,7 +13,7 @@ namespace cistern {
 /// One boundary stimulus.
 struct LogicRow {
   std::string trigger;
-  std::string stimulus;        ///< "20 samples over inside the window on 2 channels"
+  std::string stimulus;  ///< "20 samples over inside the window on 2 channels"
   bool should_fire{false};
   bool fired{false};
 };
@@ -29,7 +29,7 @@ struct LogicAgreement {
 struct LogicCheck {
   std::vector<LogicRow> rows;
   std::vector<LogicAgreement> agreements;
-  std::vector<std::string> warnings;   ///< "short can never fire: ..."
+  std::vector<std::string> warnings;  ///< "short can never fire: ..."
   [[nodiscard]] bool passed() const;
 };
 

@@ -48,27 +48,31 @@ struct Estimator {
     if (basis.blocks.counts.empty()) return {};
     const RateEstimate estimate = estimate_rate(basis.blocks, confidence);
     if (sides == Sides::Two) return with_limits(estimate.rate_hz, estimate.two_sided);
-    return with_limits(estimate.rate_hz, {rate_at_least(basis.blocks, confidence), rate_at_most(basis.blocks, confidence)});
+    return with_limits(estimate.rate_hz,
+                       {rate_at_least(basis.blocks, confidence), rate_at_most(basis.blocks, confidence)});
   }
   Estimate operator()(const QuantileBasis& basis) const {
     if (basis.sorted.empty()) return {};
     const double value = quantile_of(basis.sorted, basis.fraction);
     if (sides == Sides::Two) return with_limits(value, quantile_limits(basis.sorted, basis.fraction, confidence));
-    return with_limits(value, {quantile_low(basis.sorted, basis.fraction, confidence), quantile_high(basis.sorted, basis.fraction, confidence)});
+    return with_limits(value, {quantile_low(basis.sorted, basis.fraction, confidence),
+                               quantile_high(basis.sorted, basis.fraction, confidence)});
   }
   Estimate operator()(const PairedBasis& basis) const {
     if (basis.pairs == 0) return {};
     const auto [candidate, in_service, pairs] = std::tuple(basis.only_candidate, basis.only_in_service, basis.pairs);
     const double gain = static_cast<double>(candidate - in_service) / static_cast<double>(pairs);
     if (sides == Sides::Two) return with_limits(gain, paired_difference(candidate, in_service, pairs, confidence));
-    return with_limits(gain, {paired_difference_low(candidate, in_service, pairs, confidence), paired_difference_high(candidate, in_service, pairs, confidence)});
+    return with_limits(gain, {paired_difference_low(candidate, in_service, pairs, confidence),
+                              paired_difference_high(candidate, in_service, pairs, confidence)});
   }
   Estimate operator()(const PlainBasis& basis) const { return {finite(basis.value), {}, {}}; }
 };
 
 std::string count_text(std::int64_t count) {
   std::string digits = std::to_string(count);
-  for (auto at = static_cast<std::ptrdiff_t>(digits.size()) - 3; at > 0; at -= 3) digits.insert(static_cast<std::size_t>(at), ",");
+  for (auto at = static_cast<std::ptrdiff_t>(digits.size()) - 3; at > 0; at -= 3)
+    digits.insert(static_cast<std::size_t>(at), ",");
   return digits;
 }
 
@@ -94,8 +98,9 @@ struct MoreNeeded {
 RequirementOutcome start_outcome(const Requirement& requirement, const std::string& unit) {
   RequirementOutcome outcome;
   outcome.name = requirement.name;
-  outcome.bound = fmt::format("{} {} {}{}{}", requirement.figure, requirement.kind == BoundKind::AtMost ? "at most" : "at least",
-                              number_text(requirement.bound), unit.empty() ? "" : " ", unit);
+  outcome.bound =
+      fmt::format("{} {} {}{}{}", requirement.figure, requirement.kind == BoundKind::AtMost ? "at most" : "at least",
+                  number_text(requirement.bound), unit.empty() ? "" : " ", unit);
   return outcome;
 }
 
@@ -103,8 +108,10 @@ RequirementOutcome start_outcome(const Requirement& requirement, const std::stri
 Verdict verdict_of(const Requirement& requirement, const Estimate& estimate) {
   constexpr double unbounded = std::numeric_limits<double>::infinity();
   const bool has_limits = estimate.low || estimate.high;
-  const Limits limits = has_limits ? Limits{estimate.low.value_or(-unbounded), estimate.high.value_or(unbounded)} : Limits{*estimate.value, *estimate.value};
-  return requirement.kind == BoundKind::AtMost ? judge_at_most(limits, requirement.bound) : judge_at_least(limits, requirement.bound);
+  const Limits limits = has_limits ? Limits{estimate.low.value_or(-unbounded), estimate.high.value_or(unbounded)}
+                                   : Limits{*estimate.value, *estimate.value};
+  return requirement.kind == BoundKind::AtMost ? judge_at_most(limits, requirement.bound)
+                                               : judge_at_least(limits, requirement.bound);
 }
 
 }  // namespace
@@ -121,8 +128,9 @@ Figure figure_of(const MeasuredFigure& measured) {
   Figure figure{measured.name, estimate.value, estimate.low, estimate.high, {}, {}, measured.unit, measured.note};
   if (const auto* rate = std::get_if<RateBasis>(&measured.basis); rate != nullptr && !rate->blocks.counts.empty()) {
     const RateEstimate counted = estimate_rate(rate->blocks, figure_confidence);
-    figure.note += fmt::format("{}{} blocks of {:.3g} s; variance over mean allowed for: {:.3g}; {}", figure.note.empty() ? "" : "; ", rate->blocks.counts.size(),
-                               rate->blocks.block_s, counted.dispersion, counted.method);
+    figure.note += fmt::format("{}{} blocks of {:.3g} s; variance over mean allowed for: {:.3g}; {}",
+                               figure.note.empty() ? "" : "; ", rate->blocks.counts.size(), rate->blocks.block_s,
+                               counted.dispersion, counted.method);
   }
   return figure;
 }
@@ -142,7 +150,8 @@ RequirementOutcome judge(const Requirement& requirement, const MeasuredFigure& m
   outcome.low = estimate.low;
   outcome.high = estimate.high;
   outcome.verdict = name_of(verdict_of(requirement, estimate));
-  if (outcome.verdict == "undecided") outcome.reason = "the limits straddle the bound; " + std::visit(MoreNeeded{requirement}, measured.basis);
+  if (outcome.verdict == "undecided")
+    outcome.reason = "the limits straddle the bound; " + std::visit(MoreNeeded{requirement}, measured.basis);
   return outcome;
 }
 
@@ -150,7 +159,8 @@ std::vector<RequirementOutcome> judge_all(const std::vector<Requirement>& requir
                                           const std::vector<MeasuredFigure>& figures) {
   std::vector<RequirementOutcome> outcomes;
   for (const Requirement& requirement : requirements) {
-    const auto found = std::find_if(figures.begin(), figures.end(), [&](const auto& figure) { return figure.name == requirement.figure; });
+    const auto found = std::find_if(figures.begin(), figures.end(),
+                                    [&](const auto& figure) { return figure.name == requirement.figure; });
     if (found != figures.end()) outcomes.push_back(judge(requirement, *found));
   }
   return outcomes;
@@ -159,15 +169,17 @@ std::vector<RequirementOutcome> judge_all(const std::vector<Requirement>& requir
 void check_figures_exist(const std::vector<Requirement>& requirements, const std::vector<std::string>& names) {
   for (const Requirement& requirement : requirements) {
     if (std::find(names.begin(), names.end(), requirement.figure) != names.end()) continue;
-    throw InputError(requirement.place, fmt::format("[requirements.{}] figure: this run has no figure `{}`; nearest: {}", requirement.name,
-                                                    requirement.figure, nearest_word(requirement.figure, names)));
+    throw InputError(requirement.place,
+                     fmt::format("[requirements.{}] figure: this run has no figure `{}`; nearest: {}", requirement.name,
+                                 requirement.figure, nearest_word(requirement.figure, names)));
   }
 }
 
 std::string overall_verdict(const std::vector<RequirementOutcome>& outcomes) {
   if (outcomes.empty()) return "no requirements";
   const auto any = [&](const char* verdict) {
-    return std::any_of(outcomes.begin(), outcomes.end(), [&](const auto& outcome) { return outcome.verdict == verdict; });
+    return std::any_of(outcomes.begin(), outcomes.end(),
+                       [&](const auto& outcome) { return outcome.verdict == verdict; });
   };
   return any("not met") ? "not met" : any("undecided") ? "undecided" : "met";
 }

@@ -58,9 +58,11 @@ class Qualification {
     const bool quick = options_.effort == Effort::Quick;
     const QualifyConfig& config = scenario_.qualify;
     results_.generator = std::make_unique<TraceGenerator>(scenario_.generator, seed_of(scenario_, options_));
-    results_.signals = std::make_unique<EfficiencyRun>(results_.plan, config, *results_.generator, signal_points(scenario_.signals),
-                                                       quick ? config.quick_signals_per_point : config.signals_per_point);
-    results_.time = std::make_unique<LiveTimePlan>(quick ? config.quick_live_time_s : config.live_time_s, config.block_s, results_.plan);
+    results_.signals =
+        std::make_unique<EfficiencyRun>(results_.plan, config, *results_.generator, signal_points(scenario_.signals),
+                                        quick ? config.quick_signals_per_point : config.signals_per_point);
+    results_.time = std::make_unique<LiveTimePlan>(quick ? config.quick_live_time_s : config.live_time_s,
+                                                   config.block_s, results_.plan);
     results_.background = std::make_unique<BackgroundRun>(results_.plan, scenario_.capture, *results_.time);
     results_.scan = std::make_unique<RateScan>(rate_variants(results_.plan, scenario_.rate), *results_.time);
   }
@@ -85,8 +87,13 @@ class Qualification {
     std::vector<std::int64_t> rows(results_.plan.triggers.size(), 0);
     const auto keep_row = [&](std::size_t trigger, const Firing& firing) {
       if (++rows[trigger] > firing_rows_per_trigger) return;
-      directory.add_firing({0, results_.plan.triggers[trigger].name, firing.sample, {}, firing.onset_sample,
-                            std::string(name_of(firing.status)), firing.start_unknown});
+      directory.add_firing({0,
+                            results_.plan.triggers[trigger].name,
+                            firing.sample,
+                            {},
+                            firing.onset_sample,
+                            std::string(name_of(firing.status)),
+                            firing.start_unknown});
     };
     CampaignPlan plan{results_.time->units(), [this](std::int64_t unit) { return work_live_unit(unit); },
                       [&](std::int64_t unit, std::string_view result) {

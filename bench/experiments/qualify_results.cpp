@@ -17,15 +17,18 @@ void append(std::vector<MeasuredFigure>& to, std::vector<MeasuredFigure> more) {
 }
 
 MeasuredFigure logic_figure(const LogicCheck& logic) {
-  const auto wrong = std::count_if(logic.rows.begin(), logic.rows.end(), [](const LogicRow& row) { return row.should_fire != row.fired; });
+  const auto wrong = std::count_if(logic.rows.begin(), logic.rows.end(),
+                                   [](const LogicRow& row) { return row.should_fire != row.fired; });
   std::int64_t differences = wrong;
   for (const LogicAgreement& agreement : logic.agreements) differences += agreement.differences;
-  return {"logic_faults.all", "", "boundary stimuli answered wrongly, and differences between the fast kernels and the specification",
+  return {"logic_faults.all", "",
+          "boundary stimuli answered wrongly, and differences between the fast kernels and the specification",
           PlainBasis{static_cast<double>(differences)}};
 }
 
 const Figure* find_figure(const Summary& summary, const std::string& name) {
-  const auto found = std::find_if(summary.figures.begin(), summary.figures.end(), [&](const Figure& figure) { return figure.name == name; });
+  const auto found = std::find_if(summary.figures.begin(), summary.figures.end(),
+                                  [&](const Figure& figure) { return figure.name == name; });
   return found == summary.figures.end() ? nullptr : &*found;
 }
 
@@ -35,7 +38,8 @@ std::vector<std::string> subject_lines(const QualifyResults& results, const Summ
   for (const Subject& subject : subjects_of(results.plan.triggers)) {
     const std::string quantity = subject.is_set ? "tag_rate." : "background_rate.";
     if (const Figure* rate = find_figure(summary, quantity + subject.name); rate != nullptr && rate->value) {
-      lines.push_back(fmt::format("  {:<12} {:<16} {}", subject.name, subject.is_set ? "tag rate" : "background rate", value_with_limits(*rate)));
+      lines.push_back(fmt::format("  {:<12} {:<16} {}", subject.name, subject.is_set ? "tag rate" : "background rate",
+                                  value_with_limits(*rate)));
     }
   }
   return lines;
@@ -46,11 +50,16 @@ std::vector<std::string> comparison_lines(const QualifyResults& results) {
   if (!results.signals) return lines;
   for (const PairedPoint& pair : paired_points(*results.signals, results.plan)) {
     const std::int64_t all = pair.both + pair.only_in_service + pair.only_candidate + pair.neither;
-    const auto share = [&](std::int64_t fired) { return 100.0 * static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1)); };
-    lines.push_back(fmt::format("  {:<30} {:>9.1f} % {:>9.1f} %  {:>+7.1f} %   p {:.2g}", pair.point->condition, share(pair.both + pair.only_in_service),
-                                share(pair.both + pair.only_candidate), share(pair.only_candidate - pair.only_in_service), pair.p_value));
+    const auto share = [&](std::int64_t fired) {
+      return 100.0 * static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1));
+    };
+    lines.push_back(fmt::format("  {:<30} {:>9.1f} % {:>9.1f} %  {:>+7.1f} %   p {:.2g}", pair.point->condition,
+                                share(pair.both + pair.only_in_service), share(pair.both + pair.only_candidate),
+                                share(pair.only_candidate - pair.only_in_service), pair.p_value));
   }
-  if (!lines.empty()) lines.insert(lines.begin(), fmt::format("  {:<30} {:>11} {:>11}  {:>9}   exact McNemar", "efficiency", "in service", "candidate", "gain"));
+  if (!lines.empty())
+    lines.insert(lines.begin(), fmt::format("  {:<30} {:>11} {:>11}  {:>9}   exact McNemar", "efficiency", "in service",
+                                            "candidate", "gain"));
   return lines;
 }
 
@@ -85,13 +94,14 @@ std::vector<std::string> qualify_lines(const QualifyResults& results, const Summ
   };
   add(subject_lines(results, summary));
   add(comparison_lines(results));
-  add({fmt::format("  logic: {} boundary stimuli, {} firings against the specification: {}", results.logic.rows.size(),
-                   [&] {
-                     std::int64_t firings = 0;
-                     for (const LogicAgreement& agreement : results.logic.agreements) firings += agreement.firings;
-                     return firings;
-                   }(),
-                   results.logic.passed() ? "all as the settings say" : "NOT as the settings say")});
+  add({fmt::format(
+      "  logic: {} boundary stimuli, {} firings against the specification: {}", results.logic.rows.size(),
+      [&] {
+        std::int64_t firings = 0;
+        for (const LogicAgreement& agreement : results.logic.agreements) firings += agreement.firings;
+        return firings;
+      }(),
+      results.logic.passed() ? "all as the settings say" : "NOT as the settings say")});
   for (const std::string& note : summary.notes) lines.push_back("  note: " + note);
   lines.emplace_back();
   return lines;

@@ -34,7 +34,8 @@ std::vector<std::string> rate_lines(const RateScan& scan, const StationPlan& pla
       lines.push_back(fmt::format("  {} {:<24} {}", scale, level_text(variant), value_with_limits(figures[v])));
     }
     if (const auto slope = level_slope(scan, t)) {
-      lines.push_back(fmt::format("  slope of ln(rate) against ln(level): {:.1f} +- {:.1f}", slope->value, slope->standard_error));
+      lines.push_back(
+          fmt::format("  slope of ln(rate) against ln(level): {:.1f} +- {:.1f}", slope->value, slope->standard_error));
     }
     if (!config.target_rate_hz) continue;
     const auto factor = factor_for_rate(scan, t, *config.target_rate_hz);
@@ -51,7 +52,8 @@ RunOutcome run_rate(const Scenario& scenario, const RunOptions& options) {
   const StationFacts facts = facts_of(scenario);
   const StationPlan plan = plan_station(scenario, facts);
   const TraceGenerator generator(scenario.generator, seed_of(scenario, options));
-  const double live_time_s = options.effort == Effort::Quick ? scenario.rate.quick_live_time_s : scenario.rate.live_time_s;
+  const double live_time_s =
+      options.effort == Effort::Quick ? scenario.rate.quick_live_time_s : scenario.rate.live_time_s;
   const LiveTimePlan time(live_time_s, scenario.rate.block_s, plan);
   RateScan scan(rate_variants(plan, scenario.rate), time);
 
@@ -65,7 +67,8 @@ RunOutcome run_rate(const Scenario& scenario, const RunOptions& options) {
                         [&](std::int64_t, std::string_view result) { scan.merge(unpack_observed(result, 1).front()); }};
   RunOutcome outcome;
   outcome.directory = directory.path();
-  outcome.interrupted = run_campaign(campaign, kept_campaign(directory, "background", options)) == CampaignEnd::Interrupted;
+  outcome.interrupted =
+      run_campaign(campaign, kept_campaign(directory, "background", options)) == CampaignEnd::Interrupted;
   if (outcome.interrupted) {
     directory.keep_unfinished();
     return outcome;

@@ -49,9 +49,13 @@ std::vector<RateVariant> rate_variants(const StationPlan& plan, const RateConfig
 class RateScan::Observer : public LiveObserver {
  public:
   Observer(const std::vector<RateVariant>& variants, const LiveTimePlan& time, std::int64_t unit)
-      : time_(time), first_block_(time.first_block(unit)), first_(time.first_sample(unit)), start_(time.run_up_start(unit)) {
+      : time_(time),
+        first_block_(time.first_block(unit)),
+        first_(time.first_sample(unit)),
+        start_(time.run_up_start(unit)) {
     for (const RateVariant& variant : variants) kernels_.emplace_back(variant.settings);
-    counts_.assign(kernels_.size(), std::vector<std::int64_t>(static_cast<std::size_t>(time.end_block(unit) - first_block_), 0));
+    counts_.assign(kernels_.size(),
+                   std::vector<std::int64_t>(static_cast<std::size_t>(time.end_block(unit) - first_block_), 0));
   }
 
   void take(const CodesView& codes) override {

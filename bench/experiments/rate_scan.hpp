@@ -17,10 +17,10 @@ enum class ScanAxis { Level, SamplesOver };
 
 /// One trigger with one setting changed.
 struct RateVariant {
-  std::size_t trigger{0};       ///< place in the plan
+  std::size_t trigger{0};  ///< place in the plan
   ScanAxis axis{ScanAxis::Level};
-  double x{0};                  ///< factor on the level or sum, or samples over
-  std::string condition;        ///< in figure names: "level_1p25", "samples_over_30"
+  double x{0};            ///< factor on the level or sum, or samples over
+  std::string condition;  ///< in figure names: "level_1p25", "samples_over_30"
   TriggerSettings settings;
 };
 

@@ -27,8 +27,8 @@ std::optional<std::vector<Number>> scenario_first(const std::optional<std::vecto
   if (!scenario) return file;
   const auto wanted = one_per_channel(*scenario, channels);
   if (file && *file != wanted) {
-    notes.push_back(fmt::format("{} of the scenario ({}) is used; the trace file says {}", name, fmt::join(wanted, ", "),
-                                fmt::join(*file, ", ")));
+    notes.push_back(fmt::format("{} of the scenario ({}) is used; the trace file says {}", name,
+                                fmt::join(wanted, ", "), fmt::join(*file, ", ")));
   }
   return wanted;
 }
@@ -40,7 +40,8 @@ void check_agreement(const Scenario& scenario, const TraceFileInfo& info, const 
                                        digitizer.channels));
   }
   if (info.bits && *info.bits != digitizer.bits) {
-    throw InputError(file, fmt::format("has codes of {} bits, expected the {} of [digitizer] bits", *info.bits, digitizer.bits));
+    throw InputError(
+        file, fmt::format("has codes of {} bits, expected the {} of [digitizer] bits", *info.bits, digitizer.bits));
   }
   if (info.sample_rate_mhz && std::abs(*info.sample_rate_mhz / digitizer.sample_rate_mhz - 1) > 1e-9) {
     throw InputError(file, fmt::format("was sampled at {} MHz, expected the {} MHz of [digitizer] sample_rate_mhz",
@@ -86,7 +87,8 @@ class Scanner {
   }
 
   void end_trace(const TraceBlock& last) {
-    RecordedTrace trace{last.trace, last.start_ns, last.first_sample + static_cast<std::int64_t>(last.codes.samples()), {}};
+    RecordedTrace trace{
+        last.trace, last.start_ns, last.first_sample + static_cast<std::int64_t>(last.codes.samples()), {}};
     for (const MarginMeter& meter : meters_) {
       auto best = meter.best();
       if (best) best->sample -= trace_start_;

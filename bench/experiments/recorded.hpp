@@ -17,10 +17,10 @@ namespace cistern {
 /// What file and scenario together say of the recorded traces.
 struct RecordedFacts {
   StationFacts station;
-  std::string selection;                   ///< "unbiased", "triggered_by:NAME" or "" (nobody says)
+  std::string selection;  ///< "unbiased", "triggered_by:NAME" or "" (nobody says)
   std::optional<double> live_time_s;
   bool contiguous{false};
-  std::vector<std::string> notes;          ///< differences where the scenario won, one sentence each
+  std::vector<std::string> notes;  ///< differences where the scenario won, one sentence each
 };
 
 /// Channels, bits and rate must agree; baseline and calibration of the scenario win, a difference is

@@ -17,11 +17,14 @@ std::optional<double> seconds_per_trace(const RecordedCounts& counts, const Reco
 
 std::string why_no_rate(const RecordedFacts& facts) {
   if (facts.selection.rfind(triggered_by, 0) == 0) {
-    return fmt::format("no background rate or absolute efficiency from the recorded traces: they were selected by a trigger ({}), so "
-                       "only what holds given that trigger is told", facts.selection);
+    return fmt::format(
+        "no background rate or absolute efficiency from the recorded traces: they were selected by a trigger ({}), so "
+        "only what holds given that trigger is told",
+        facts.selection);
   }
   if (facts.selection.empty()) {
-    return "no background rate from the recorded traces: neither the file nor [traces] selection says how they were selected";
+    return "no background rate from the recorded traces: neither the file nor [traces] selection says how they were "
+           "selected";
   }
   return "no background rate from the recorded traces: neither the file nor [traces] live_time_s says their live time";
 }
@@ -59,7 +62,8 @@ std::vector<MeasuredFigure> recorded_figures(const RecordedCounts& counts, const
     const std::string& name = plan.triggers[t].name;
     const TriggerRecordedCounts& own = counts.triggers[t];
     if (trace_s) {
-      figures.push_back({"background_rate." + name + ".recorded", "Hz", fmt::format("{} firings in {:.4g} s of recorded traces", own.passed, *facts.live_time_s),
+      figures.push_back({"background_rate." + name + ".recorded", "Hz",
+                         fmt::format("{} firings in {:.4g} s of recorded traces", own.passed, *facts.live_time_s),
                          RateBasis{{own.passed_per_trace, *trace_s}}});
     }
     figures.push_back({"fired_share." + name + share_condition(facts), "", "recorded traces with at least one firing",

@@ -11,10 +11,10 @@
 namespace cistern {
 
 struct TriggerRecordedCounts {
-  std::int64_t firings{0};                   ///< with any status
+  std::int64_t firings{0};  ///< with any status
   std::int64_t passed{0};
-  std::int64_t traces_fired{0};              ///< with at least one that passed
-  std::vector<double> margins;               ///< best of each trace
+  std::int64_t traces_fired{0};  ///< with at least one that passed
+  std::vector<double> margins;   ///< best of each trace
   std::vector<std::int64_t> passed_per_trace;
 };
 

@@ -23,7 +23,8 @@ class BusyStage {
 
   void start_trace() {
     books_.clear();
-    for (std::size_t i = 0; scenario_.has_station && i < trigger_sets.size(); ++i) books_.emplace_back(scenario_.capture);
+    for (std::size_t i = 0; scenario_.has_station && i < trigger_sets.size(); ++i)
+      books_.emplace_back(scenario_.capture);
   }
 
   FiringStatus pass(const TriggerSettings& trigger, const Firing& firing) {
@@ -65,7 +66,8 @@ class Replay {
     directory_.make_table(RowTable::Margins);
   }
 
-  void take_firing(std::int64_t trace, std::optional<GpsNanoseconds> start_ns, std::size_t trigger, const Firing& firing) {
+  void take_firing(std::int64_t trace, std::optional<GpsNanoseconds> start_ns, std::size_t trigger,
+                   const Firing& firing) {
     const FiringStatus status = busy_.pass(triggers_[trigger], firing);
     FiringRow row;
     row.trace = trace;
@@ -143,7 +145,8 @@ RunOutcome run_replay(const Scenario& scenario, const RunOptions& options) {
   outcome.summary.requirements = judge_all(scenario.requirements, figures);
   outcome.summary.verdict = overall_verdict(outcome.summary.requirements);
   outcome.lines = replay_lines(plan, replay.counts(), file.filename().string(), outcome.summary);
-  directory.write_file("report.html", render_report(replay_report(plan, replay.counts(), file.filename().string(), outcome.summary)));
+  directory.write_file("report.html",
+                       render_report(replay_report(plan, replay.counts(), file.filename().string(), outcome.summary)));
   directory.finish(outcome.summary);
   return outcome;
 }

@@ -55,7 +55,8 @@ CampaignOptions kept_campaign(RunDirectory& directory, const std::string& stage,
 void require_tank(std::string_view command, const Scenario& scenario) {
   if (scenario.has_tank) return;
   throw InputError(scenario.path.string(), fmt::format("has no [tank], so `{}` cannot make traces; expected [tank] "
-                                                       "(see `cistern explain tank`)", command));
+                                                       "(see `cistern explain tank`)",
+                                                       command));
 }
 
 }  // namespace cistern

@@ -19,7 +19,8 @@ namespace cistern {
 [[nodiscard]] Summary start_summary(std::string_view command, const Scenario& scenario, const RunOptions& options);
 
 /// Campaign options that keep each unit's result in the run directory and recall it from there.
-[[nodiscard]] CampaignOptions kept_campaign(RunDirectory& directory, const std::string& stage, const RunOptions& options);
+[[nodiscard]] CampaignOptions kept_campaign(RunDirectory& directory, const std::string& stage,
+                                            const RunOptions& options);
 
 /// InputError saying that the command needs tables that the scenario does not have.
 void require_tank(std::string_view command, const Scenario& scenario);

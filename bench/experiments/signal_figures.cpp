@@ -20,15 +20,19 @@ std::vector<double> delays_ns(const std::vector<std::int32_t>& delays, double ra
   return ns;
 }
 
-void add_responses_of(const Subject& subject, const SignalPoint& point, const PointResponses& responses, double rate_mhz,
-                      std::vector<MeasuredFigure>& figures) {
+void add_responses_of(const Subject& subject, const SignalPoint& point, const PointResponses& responses,
+                      double rate_mhz, std::vector<MeasuredFigure>& figures) {
   const auto delays = delays_of(subject, responses);
   const auto fired = std::count_if(delays.begin(), delays.end(), [](std::int32_t delay) { return delay >= 0; });
   const std::string tail = fmt::format(".{}.{}", subject.name, point.condition);
   figures.push_back({"efficiency" + tail, "", "", ProportionBasis{fired, static_cast<std::int64_t>(delays.size())}});
   const auto ns = delays_ns(delays, rate_mhz);
-  figures.push_back({"delay_median" + tail, "ns", "onset to first firing, of the signals that fired", QuantileBasis{ns, 0.5}});
-  figures.push_back({"delay_p95" + tail, "ns", "onset to first firing, of the signals that fired", QuantileBasis{ns, 0.95}});
+  figures.push_back({"delay_median" + tail, "ns",
+                     "onset to first firing, of the signals that fired; the digitizer's pipeline comes on top",
+                     QuantileBasis{ns, 0.5}});
+  figures.push_back({"delay_p95" + tail, "ns",
+                     "onset to first firing, of the signals that fired; the digitizer's pipeline comes on top",
+                     QuantileBasis{ns, 0.95}});
 }
 
 std::vector<double> margins_of(std::size_t trigger, const PointResponses& responses) {
@@ -50,8 +54,8 @@ std::vector<MeasuredFigure> signal_figures(const EfficiencyRun& run, const Stati
     }
     for (std::size_t t = 0; t < plan.triggers.size(); ++t) {
       figures.push_back({fmt::format("margin_median.{}.{}", plan.triggers[t].name, point.condition),
-                         std::string(margin_unit(plan.triggers[t].condition.kind)), "best of the trace; at least 0 fires",
-                         QuantileBasis{margins_of(t, run.responses(p)), 0.5}});
+                         std::string(margin_unit(plan.triggers[t].condition.kind)),
+                         "best of the trace; at least 0 fires", QuantileBasis{margins_of(t, run.responses(p)), 0.5}});
     }
   }
   return figures;
@@ -80,9 +84,11 @@ std::vector<MeasuredFigure> paired_figures(const std::vector<PairedPoint>& point
   std::vector<MeasuredFigure> figures;
   for (const PairedPoint& pair : points) {
     const std::int64_t all = pair.both + pair.only_in_service + pair.only_candidate + pair.neither;
-    figures.push_back({"gain.candidate." + pair.point->condition, "", "efficiency of the candidate less that in service, paired by signal",
+    figures.push_back({"gain.candidate." + pair.point->condition, "",
+                       "efficiency of the candidate less that in service, paired by signal",
                        PairedBasis{pair.only_candidate, pair.only_in_service, all}});
-    figures.push_back({"p_value.candidate." + pair.point->condition, "", "exact McNemar test, two-sided; one of many, so judge the smallest with care",
+    figures.push_back({"p_value.candidate." + pair.point->condition, "",
+                       "exact McNemar test, two-sided; one of many, so judge the smallest with care",
                        PlainBasis{pair.p_value}});
   }
   return figures;

@@ -19,7 +19,7 @@ struct PairedPoint {
   std::int64_t only_in_service{0};
   std::int64_t only_candidate{0};
   std::int64_t neither{0};
-  double p_value{1};                    ///< exact McNemar, two-sided
+  double p_value{1};  ///< exact McNemar, two-sided
 };
 
 /// Empty when there is nothing to compare.

@@ -13,7 +13,7 @@ namespace cistern {
 enum class Effort { Full, Quick };
 
 struct StationPlan {
-  DigitizerConfig digitizer;            ///< baselines and gains filled in, one per channel
+  DigitizerConfig digitizer;  ///< baselines and gains filled in, one per channel
   std::vector<TriggerSettings> triggers;
   std::int64_t longest_reach_samples{1};
   std::int64_t longest_hold_off_samples{0};

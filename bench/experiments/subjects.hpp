@@ -10,8 +10,8 @@
 namespace cistern {
 
 struct Subject {
-  std::string name;                     ///< "long", "in_service", "candidate"
-  std::vector<std::size_t> members;     ///< places in the plan's triggers
+  std::string name;                  ///< "long", "in_service", "candidate"
+  std::vector<std::size_t> members;  ///< places in the plan's triggers
   bool is_set{false};
 };
 

@@ -9,7 +9,8 @@ constexpr std::size_t samples_per_block = 65'536;
 
 /// What the file says; what the user says where the file says nothing.
 template <typename Value>
-void add_said(std::optional<Value>& from_file, const std::optional<Value>& said, const char* option, const std::string& file) {
+void add_said(std::optional<Value>& from_file, const std::optional<Value>& said, const char* option,
+              const std::string& file) {
   if (!said) return;
   if (from_file && !(*from_file == *said)) {
     throw InputError(option, fmt::format("{} says otherwise itself; expected no {} or the same value", file, option));
@@ -26,7 +27,8 @@ TraceFileInfo complete_info(const ConvertRequest& request, const TraceFileInfo& 
   add_said(info.selection, request.said.selection, "--selection", file);
   add_said(info.live_time_s, request.said.live_time_s, "--live-time-s", file);
   info.contiguous = info.contiguous || request.said.contiguous;
-  if (info.baseline_counts && info.baseline_counts->size() == 1) info.baseline_counts->resize(info.channels, info.baseline_counts->front());
+  if (info.baseline_counts && info.baseline_counts->size() == 1)
+    info.baseline_counts->resize(info.channels, info.baseline_counts->front());
   return info;
 }
 

@@ -51,18 +51,21 @@ std::vector<double> band_powers_db(const std::vector<double>& spectrum) {
 
 std::vector<std::string> describe_traces(const std::filesystem::path& file, const TraceProgress& progress) {
   const auto [info, description] = survey(file, progress);
-  std::vector<std::string> lines{
-      fmt::format("{}: {} traces, {} channels, {} samples each", file.string(), description.traces, info.channels, info.samples),
-      "sampling rate: " + or_unsaid(info.sample_rate_mhz, " MHz"),
-      "bits: " + or_unsaid(info.bits, ""),
-      "selection: " + or_unsaid(info.selection, ""),
-      "live time: " + or_unsaid(info.live_time_s, " s"),
-      fmt::format("contiguous: {}", info.contiguous ? "yes" : "no")};
-  if (info.baseline_counts) lines.push_back(fmt::format("baseline said in the file: {} counts", fmt::join(*info.baseline_counts, ", ")));
-  lines.push_back(fmt::format("{:<8}{:>9}{:>9}{:>11}{:>9}{:>10}{:>11}{:>9}{:>11}", "channel", "smallest", "largest", "mean", "rms", "baseline", "noise rms", "at zero", "saturated"));
+  std::vector<std::string> lines{fmt::format("{}: {} traces, {} channels, {} samples each", file.string(),
+                                             description.traces, info.channels, info.samples),
+                                 "sampling rate: " + or_unsaid(info.sample_rate_mhz, " MHz"),
+                                 "bits: " + or_unsaid(info.bits, ""),
+                                 "selection: " + or_unsaid(info.selection, ""),
+                                 "live time: " + or_unsaid(info.live_time_s, " s"),
+                                 fmt::format("contiguous: {}", info.contiguous ? "yes" : "no")};
+  if (info.baseline_counts)
+    lines.push_back(fmt::format("baseline said in the file: {} counts", fmt::join(*info.baseline_counts, ", ")));
+  lines.push_back(fmt::format("{:<8}{:>9}{:>9}{:>11}{:>9}{:>10}{:>11}{:>9}{:>11}", "channel", "smallest", "largest",
+                              "mean", "rms", "baseline", "noise rms", "at zero", "saturated"));
   for (std::size_t c = 0; c < description.channels.size(); ++c) {
     const ChannelDescription& d = description.channels[c];
-    lines.push_back(fmt::format("{:<8}{:>9}{:>9}{:>11.3f}{:>9.3f}{:>10}{:>11.3f}{:>9}{:>11}", c, d.smallest, d.largest, d.mean, d.rms, d.baseline, d.noise_rms, d.at_zero,
+    lines.push_back(fmt::format("{:<8}{:>9}{:>9}{:>11.3f}{:>9.3f}{:>10}{:>11.3f}{:>9}{:>11}", c, d.smallest, d.largest,
+                                d.mean, d.rms, d.baseline, d.noise_rms, d.at_zero,
                                 info.bits ? std::to_string(d.at_largest_code) : "?"));
   }
   lines.emplace_back("all in counts; baseline is the most frequent code, noise rms that of the codes at and below it");
@@ -70,8 +73,9 @@ std::vector<std::string> describe_traces(const std::filesystem::path& file, cons
   for (std::size_t c = 0; c < description.channels.size(); ++c) {
     const auto bands = band_powers_db(description.channels[c].spectrum);
     if (bands.empty()) continue;
-    lines.push_back(fmt::format("channel {} power in {} equal bands up to {}: {:.1f} dB (counts squared)", c, shown_bands,
-                                nyquist_mhz > 0 ? fmt::format("{} MHz", nyquist_mhz) : "half the sampling rate", fmt::join(bands, ", ")));
+    lines.push_back(fmt::format(
+        "channel {} power in {} equal bands up to {}: {:.1f} dB (counts squared)", c, shown_bands,
+        nyquist_mhz > 0 ? fmt::format("{} MHz", nyquist_mhz) : "half the sampling rate", fmt::join(bands, ", ")));
   }
   return lines;
 }
@@ -79,7 +83,10 @@ std::vector<std::string> describe_traces(const std::filesystem::path& file, cons
 std::string describe_traces_json(const std::filesystem::path& file, const TraceProgress& progress) {
   const auto [info, description] = survey(file, progress);
   using Json = nlohmann::ordered_json;
-  Json json = {{"file", file.filename().string()}, {"traces", description.traces}, {"samples", info.samples}, {"contiguous", info.contiguous}};
+  Json json = {{"file", file.filename().string()},
+               {"traces", description.traces},
+               {"samples", info.samples},
+               {"contiguous", info.contiguous}};
   if (info.sample_rate_mhz) json["sample_rate_mhz"] = *info.sample_rate_mhz;
   if (info.bits) json["bits"] = *info.bits;
   if (info.selection) json["selection"] = *info.selection;
@@ -87,8 +94,15 @@ std::string describe_traces_json(const std::filesystem::path& file, const TraceP
   if (info.baseline_counts) json["baseline_counts"] = *info.baseline_counts;
   json["channels"] = Json::array();
   for (const ChannelDescription& d : description.channels) {
-    json["channels"].push_back({{"smallest_counts", d.smallest}, {"largest_counts", d.largest}, {"mean_counts", d.mean}, {"rms_counts", d.rms}, {"baseline_counts", d.baseline},
-                                {"noise_rms_counts", d.noise_rms}, {"samples_at_zero", d.at_zero}, {"samples_at_largest_code", d.at_largest_code}, {"spectrum_counts2", d.spectrum}});
+    json["channels"].push_back({{"smallest_counts", d.smallest},
+                                {"largest_counts", d.largest},
+                                {"mean_counts", d.mean},
+                                {"rms_counts", d.rms},
+                                {"baseline_counts", d.baseline},
+                                {"noise_rms_counts", d.noise_rms},
+                                {"samples_at_zero", d.at_zero},
+                                {"samples_at_largest_code", d.at_largest_code},
+                                {"spectrum_counts2", d.spectrum}});
   }
   return json.dump(2) + "\n";
 }

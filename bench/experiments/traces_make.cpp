@@ -40,7 +40,8 @@ void check(const MakeRequest& request) {
     throw InputError("--spread-ns", fmt::format("got {}, expected 0 to 1e6", request.spread_ns));
   }
   if (request.onset_sample && (*request.onset_sample < 0 || *request.onset_sample >= request.samples)) {
-    throw InputError("--onset-sample", fmt::format("got {}, expected 0 to {}", *request.onset_sample, request.samples - 1));
+    throw InputError("--onset-sample",
+                     fmt::format("got {}, expected 0 to {}", *request.onset_sample, request.samples - 1));
   }
   if (request.start_ns && format_of(request.out) != TraceFormat::Hdf5) {
     throw InputError("--start-ns", "only an HDF5 file can hold the start of its traces; expected --out NAME.h5");
@@ -69,8 +70,8 @@ void make_traces(const Scenario& scenario, const MakeRequest& request, const Tra
   Codes codes;
   for (std::int64_t trace = 0; trace < request.traces; ++trace) {
     if (request.signal) {
-      generator.make_signal({*request.signal, request.size_vem, request.spread_ns}, static_cast<std::uint64_t>(trace), samples,
-                            onset, waveform);
+      generator.make_signal({*request.signal, request.size_vem, request.spread_ns}, static_cast<std::uint64_t>(trace),
+                            samples, onset, waveform);
     } else {
       generator.make_background(0, trace * request.samples, samples, waveform);
     }
@@ -95,9 +96,9 @@ std::vector<std::string> calibration_lines(const Scenario& scenario, int muons, 
     return "[" + text + "]";
   };
   return {fmt::format("# {} simulated vertical muons through the centre of the tank, without noise", muons),
-          fmt::format("# standard errors: height {} counts, area {} counts x samples", list(vem.height_error, 2), list(vem.area_error, 1)),
-          "[calibration]",
-          "height_counts_per_vem = " + list(vem.height_counts, 1),
+          fmt::format("# standard errors: height {} counts, area {} counts x samples", list(vem.height_error, 2),
+                      list(vem.area_error, 1)),
+          "[calibration]", "height_counts_per_vem = " + list(vem.height_counts, 1),
           "area_counts_per_vem = " + list(vem.area_counts, 0)};
 }
 

@@ -8,9 +8,7 @@
 namespace cistern {
 namespace {
 
-[[noreturn]] void fail(sqlite3* handle) {
-  throw SystemFault(fmt::format("run.sqlite: {}", sqlite3_errmsg(handle)));
-}
+[[noreturn]] void fail(sqlite3* handle) { throw SystemFault(fmt::format("run.sqlite: {}", sqlite3_errmsg(handle))); }
 
 struct Binder {
   sqlite3_stmt* statement;
@@ -42,9 +40,7 @@ void bind(sqlite3* handle, sqlite3_stmt* statement, std::initializer_list<Cell> 
 }  // namespace
 
 Cell cell_of(const std::optional<double>& value) { return value ? Cell{*value} : Cell{}; }
-Cell cell_of(const std::optional<long long>& value) {
-  return value ? Cell{static_cast<std::int64_t>(*value)} : Cell{};
-}
+Cell cell_of(const std::optional<long long>& value) { return value ? Cell{static_cast<std::int64_t>(*value)} : Cell{}; }
 
 Database::Database(const std::filesystem::path& path) {
   if (sqlite3_open(path.c_str(), &handle_) != SQLITE_OK) {

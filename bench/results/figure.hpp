@@ -11,12 +11,12 @@ namespace cistern {
 /// written `p` (see figure_number).
 struct Figure {
   std::string name;
-  std::optional<double> value;            ///< absent: could not be given, `note` says why
-  std::optional<double> low;              ///< two-sided 95 % limits
+  std::optional<double> value;  ///< absent: could not be given, `note` says why
+  std::optional<double> low;    ///< two-sided 95 % limits
   std::optional<double> high;
   std::optional<double> systematic_low;
   std::optional<double> systematic_high;
-  std::string unit;                       ///< "" for a plain number
+  std::string unit;  ///< "" for a plain number
   std::string note;
 };
 
@@ -26,11 +26,11 @@ struct Figure {
 /// What became of one requirement.
 struct RequirementOutcome {
   std::string name;
-  std::string bound;                      ///< "background_rate.long at most 40 Hz"
+  std::string bound;  ///< "background_rate.long at most 40 Hz"
   std::optional<double> value;
-  std::optional<double> low;              ///< one-sided limits at the requirement's confidence
+  std::optional<double> low;  ///< one-sided limits at the requirement's confidence
   std::optional<double> high;
-  std::string verdict;                    ///< "met", "not met", "undecided"
+  std::string verdict;  ///< "met", "not met", "undecided"
   std::string reason;
 };
 
@@ -57,15 +57,15 @@ struct MarginRow {
 /// Everything that goes into summary.json.
 struct Summary {
   std::string command;
-  std::string scenario;                   ///< file name
+  std::string scenario;  ///< file name
   std::string scenario_digest;
   std::string title;
   unsigned long long seed{0};
   std::string version;
-  std::string verdict;                    ///< "met", "not met", "undecided", "no requirements"
+  std::string verdict;  ///< "met", "not met", "undecided", "no requirements"
   std::vector<Figure> figures;
   std::vector<RequirementOutcome> requirements;
-  std::vector<std::string> notes;         ///< warnings and limits of validity, one sentence each
+  std::vector<std::string> notes;  ///< warnings and limits of validity, one sentence each
 };
 
 }  // namespace cistern

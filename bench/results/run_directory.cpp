@@ -88,16 +88,19 @@ struct RunDirectory::State {
 void RunDirectory::State::prepare_directory(const std::optional<fs::path>& chosen, const RunIdentity& identity) {
   path = chosen ? *chosen : fs::path("cistern-run") / identity.command;
   if (fs::exists(path) && !fs::is_directory(path)) {
-    throw InputError("--out " + path.string(), "is a file; expected a directory that is absent, empty or holds the same run");
+    throw InputError("--out " + path.string(),
+                     "is a file; expected a directory that is absent, empty or holds the same run");
   }
   if (chosen && holds_something(path)) {
     const auto found = identity_in(path);
     if (!found) {
-      throw InputError("--out " + path.string(),
-                       "holds files that are no run of cistern; expected a directory that is absent, empty or holds the same run");
+      throw InputError(
+          "--out " + path.string(),
+          "holds files that are no run of cistern; expected a directory that is absent, empty or holds the same run");
     }
     if (!(*found == identity)) {
-      throw InputError("--out " + path.string(), difference(*found, identity) + "; choose another directory or remove it");
+      throw InputError("--out " + path.string(),
+                       difference(*found, identity) + "; choose another directory or remove it");
     }
     resumed = !is_complete(path);
   }
@@ -172,13 +175,15 @@ const fs::path& RunDirectory::path() const noexcept { return state_->path; }
 bool RunDirectory::is_resumed() const noexcept { return state_->resumed; }
 
 void RunDirectory::keep_unit(std::string_view stage, std::int64_t unit, std::string_view result) {
-  Statement(*state_->database, "INSERT OR REPLACE INTO units VALUES(?, ?, ?)").run({Cell{stage}, Cell{unit}, Blob{result}});
+  Statement(*state_->database, "INSERT OR REPLACE INTO units VALUES(?, ?, ?)")
+      .run({Cell{stage}, Cell{unit}, Blob{result}});
   state_->commit();
 }
 
 std::optional<std::string> RunDirectory::recall_unit(std::string_view stage, std::int64_t unit) {
   if (!state_->resumed) return {};
-  return state_->database->first_text("SELECT result FROM units WHERE stage = ? AND unit = ?", {Cell{stage}, Cell{unit}});
+  return state_->database->first_text("SELECT result FROM units WHERE stage = ? AND unit = ?",
+                                      {Cell{stage}, Cell{unit}});
 }
 
 void RunDirectory::make_table(RowTable table) {
@@ -186,17 +191,22 @@ void RunDirectory::make_table(RowTable table) {
     state_->database->execute(
         "CREATE TABLE firings(trace INTEGER, trigger TEXT, sample INTEGER, time_ns INTEGER, onset_sample INTEGER, "
         "status TEXT, start_unknown INTEGER)");
-    state_->add_firing = std::make_unique<Statement>(*state_->database, "INSERT INTO firings VALUES(?, ?, ?, ?, ?, ?, ?)");
-    state_->firings.emplace(state_->path / "firings.csv", "trace,trigger,sample,time_ns,onset_sample,status,start_unknown");
+    state_->add_firing =
+        std::make_unique<Statement>(*state_->database, "INSERT INTO firings VALUES(?, ?, ?, ?, ?, ?, ?)");
+    state_->firings.emplace(state_->path / "firings.csv",
+                            "trace,trigger,sample,time_ns,onset_sample,status,start_unknown");
     return;
   }
-  state_->database->execute("CREATE TABLE margins(trace INTEGER, trigger TEXT, sample INTEGER, margin INTEGER, unit TEXT)");
+  state_->database->execute(
+      "CREATE TABLE margins(trace INTEGER, trigger TEXT, sample INTEGER, margin INTEGER, unit TEXT)");
   state_->add_margin = std::make_unique<Statement>(*state_->database, "INSERT INTO margins VALUES(?, ?, ?, ?, ?)");
   state_->margins.emplace(state_->path / "margins.csv", "trace,trigger,sample,margin,unit");
 }
 
 void RunDirectory::add_firing(const FiringRow& row) {
-  const auto text = [](const std::optional<long long>& value) { return value ? std::to_string(*value) : std::string{}; };
+  const auto text = [](const std::optional<long long>& value) {
+    return value ? std::to_string(*value) : std::string{};
+  };
   state_->add_firing->run({Cell{std::int64_t{row.trace}}, Cell{std::string_view{row.trigger}},
                            Cell{std::int64_t{row.sample}}, cell_of(row.time_ns), cell_of(row.onset_sample),
                            Cell{std::string_view{row.status}}, Cell{std::int64_t{row.start_unknown}}});
@@ -207,7 +217,8 @@ void RunDirectory::add_firing(const FiringRow& row) {
 
 void RunDirectory::add_margin(const MarginRow& row) {
   state_->add_margin->run({Cell{std::int64_t{row.trace}}, Cell{std::string_view{row.trigger}},
-                           Cell{std::int64_t{row.sample}}, Cell{std::int64_t{row.margin}}, Cell{std::string_view{row.unit}}});
+                           Cell{std::int64_t{row.sample}}, Cell{std::int64_t{row.margin}},
+                           Cell{std::string_view{row.unit}}});
   state_->margins->add(fmt::format("{},{},{},{},{}", row.trace, row.trigger, row.sample, row.margin, row.unit));
   state_->count_row();
 }
@@ -232,8 +243,9 @@ void RunDirectory::finish(const Summary& summary) {
   {
     Statement add(*state_->database, "INSERT INTO figures VALUES(?, ?, ?, ?, ?, ?, ?, ?)");
     for (const Figure& f : summary.figures) {
-      add.run({Cell{std::string_view{f.name}}, cell_of(f.value), cell_of(f.low), cell_of(f.high), cell_of(f.systematic_low),
-               cell_of(f.systematic_high), Cell{std::string_view{f.unit}}, Cell{std::string_view{f.note}}});
+      add.run({Cell{std::string_view{f.name}}, cell_of(f.value), cell_of(f.low), cell_of(f.high),
+               cell_of(f.systematic_low), cell_of(f.systematic_high), Cell{std::string_view{f.unit}},
+               Cell{std::string_view{f.note}}});
     }
     Statement require(*state_->database, "INSERT INTO requirements VALUES(?, ?, ?, ?, ?, ?, ?)");
     for (const RequirementOutcome& r : summary.requirements) {

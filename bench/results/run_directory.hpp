@@ -17,10 +17,10 @@ namespace cistern {
 /// What makes two runs the same run.
 struct RunIdentity {
   std::string command;
-  std::string scenario;         ///< digest of the scenario text and its overrides
+  std::string scenario;  ///< digest of the scenario text and its overrides
   std::uint64_t seed{0};
   std::string version;
-  std::string options;          ///< what else changes the figures: "quick", a trace file's name
+  std::string options;  ///< what else changes the figures: "quick", a trace file's name
   bool operator==(const RunIdentity&) const = default;
 };
 

@@ -12,7 +12,9 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-Json number(const std::optional<double>& value) { return value && std::isfinite(*value) ? Json(*value) : Json(nullptr); }
+Json number(const std::optional<double>& value) {
+  return value && std::isfinite(*value) ? Json(*value) : Json(nullptr);
+}
 
 Json figure_json(const Figure& figure) {
   return {{"name", figure.name},
@@ -26,8 +28,8 @@ Json figure_json(const Figure& figure) {
 }
 
 Json requirement_json(const RequirementOutcome& outcome) {
-  return {{"name", outcome.name},          {"bound", outcome.bound},     {"value", number(outcome.value)},
-          {"low", number(outcome.low)},    {"high", number(outcome.high)}, {"verdict", outcome.verdict},
+  return {{"name", outcome.name},       {"bound", outcome.bound},       {"value", number(outcome.value)},
+          {"low", number(outcome.low)}, {"high", number(outcome.high)}, {"verdict", outcome.verdict},
           {"reason", outcome.reason}};
 }
 
@@ -53,7 +55,8 @@ std::string xml_text(std::string_view text) {
 }
 
 std::string test_case_xml(const RequirementOutcome& outcome, const std::string& command) {
-  const std::string head = fmt::format("  <testcase classname=\"{}\" name=\"{}\"", xml_text(command), xml_text(outcome.name));
+  const std::string head =
+      fmt::format("  <testcase classname=\"{}\" name=\"{}\"", xml_text(command), xml_text(outcome.name));
   if (outcome.verdict == "met") return head + "/>\n";
   return fmt::format("{}>\n    <failure type=\"{}\" message=\"{}\">{}</failure>\n  </testcase>\n", head,
                      xml_text(outcome.verdict), xml_text(outcome.bound), xml_text(outcome.reason));

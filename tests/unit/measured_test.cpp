@@ -7,8 +7,12 @@
 namespace cistern {
 namespace {
 
-Requirement at_most(double bound) { return {"rate", "s.toml:9", "background_rate.long", BoundKind::AtMost, bound, 0.95}; }
-Requirement at_least(double bound) { return {"found", "s.toml:9", "efficiency.long.muon.3_vem", BoundKind::AtLeast, bound, 0.95}; }
+Requirement at_most(double bound) {
+  return {"rate", "s.toml:9", "background_rate.long", BoundKind::AtMost, bound, 0.95};
+}
+Requirement at_least(double bound) {
+  return {"found", "s.toml:9", "efficiency.long.muon.3_vem", BoundKind::AtLeast, bound, 0.95};
+}
 
 /// 100 firings spread evenly over 10 s: one-sided 95 % limits 8.41 to 11.8 Hz (Garwood 1936).
 MeasuredFigure rate_of_ten() {
@@ -26,7 +30,8 @@ TEST(Judging, calls_a_rate_met_not_met_or_undecided_by_its_one_sided_limits) {
                              {"bound inside the limits", 10.5, "undecided"},
                              {"bound at the value", 10.0, "undecided"},
                              {"bound below the limits", 8.0, "not met"}};
-  for (const VerdictRow& row : rows) EXPECT_EQ(judge(at_most(row.bound), rate_of_ten()).verdict, row.verdict) << row.name;
+  for (const VerdictRow& row : rows)
+    EXPECT_EQ(judge(at_most(row.bound), rate_of_ten()).verdict, row.verdict) << row.name;
 }
 
 TEST(Judging, calls_a_share_met_not_met_or_undecided_by_its_one_sided_limits) {
