@@ -20,13 +20,14 @@ struct Case {
 
 /// The n-th random case of a kind that fires at least five times in `samples`.
 Case firing_case(TriggerKind kind, std::uint64_t number, std::size_t samples) {
-  for (;; number += 1'000) {
+  for (int attempt = 0; attempt < 1'000; ++attempt, number += 1'000) {
     RandomStream stream = trigger_case(kind, 2'000'000 + number);
     const TriggerSettings settings = random_settings(stream, kind);
     Codes codes = random_codes(stream, settings.condition, samples);
     std::vector<Firing> expected = by_specification(settings, codes);
     if (expected.size() >= 5) return {settings, std::move(codes), std::move(expected)};
   }
+  report_bug("one of a thousand random cases fires five times", __FILE__, __LINE__);
 }
 
 constexpr TriggerKind kinds[] = {TriggerKind::Threshold, TriggerKind::TimeOverThreshold, TriggerKind::BoxcarSum};
