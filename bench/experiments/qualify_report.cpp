@@ -96,7 +96,7 @@ ReportTable paired_table(const std::vector<PairedPoint>& points) {
   for (const PairedPoint& pair : points) {
     const auto all = static_cast<double>(std::max<std::int64_t>(1, pair.both + pair.only_in_service + pair.only_candidate + pair.neither));
     table.rows.push_back({pair.point->condition, std::to_string(pair.both), std::to_string(pair.only_in_service), std::to_string(pair.only_candidate), std::to_string(pair.neither),
-                          fmt::format("{:+.3f}", static_cast<double>(pair.only_candidate - pair.only_in_service) / all), fmt::format("{:.2g}", pair.p_value)});
+                          fmt::format("{:+.3f}", static_cast<double>(pair.only_candidate - pair.only_in_service) / all), p_value_text(pair.p_value)});
   }
   return table;
 }

@@ -53,9 +53,9 @@ std::vector<std::string> comparison_lines(const QualifyResults& results) {
     const auto share = [&](std::int64_t fired) {
       return 100.0 * static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1));
     };
-    lines.push_back(fmt::format("  {:<30} {:>9.1f} % {:>9.1f} %  {:>+7.1f} %   p {:.2g}", pair.point->condition,
+    lines.push_back(fmt::format("  {:<30} {:>9.1f} % {:>9.1f} %  {:>+7.1f} %   p {}", pair.point->condition,
                                 share(pair.both + pair.only_in_service), share(pair.both + pair.only_candidate),
-                                share(pair.only_candidate - pair.only_in_service), pair.p_value));
+                                share(pair.only_candidate - pair.only_in_service), p_value_text(pair.p_value)));
   }
   if (!lines.empty())
     lines.insert(lines.begin(), fmt::format("  {:<30} {:>11} {:>11}  {:>9}   exact McNemar", "efficiency", "in service",

@@ -80,6 +80,8 @@ std::vector<PairedPoint> paired_points(const EfficiencyRun& run, const StationPl
   return paired;
 }
 
+std::string p_value_text(double p_value) { return p_value < 1e-300 ? "< 1e-300" : fmt::format("{:.2g}", p_value); }
+
 std::vector<MeasuredFigure> paired_figures(const std::vector<PairedPoint>& points) {
   std::vector<MeasuredFigure> figures;
   for (const PairedPoint& pair : points) {

@@ -1,6 +1,7 @@
 #pragma once
 /// \file
 /// Figures of a finished (or still empty: then the names alone count) efficiency run.
+#include <string>
 #include <vector>
 
 #include "bench/experiments/efficiency.hpp"
@@ -24,6 +25,9 @@ struct PairedPoint {
 
 /// Empty when there is nothing to compare.
 [[nodiscard]] std::vector<PairedPoint> paired_points(const EfficiencyRun& run, const StationPlan& plan);
+
+/// For people: "0.012", "< 1e-300".
+[[nodiscard]] std::string p_value_text(double p_value);
 
 /// gain.candidate.* (difference of the two efficiencies) and p_value.candidate.*.
 [[nodiscard]] std::vector<MeasuredFigure> paired_figures(const std::vector<PairedPoint>& points);
