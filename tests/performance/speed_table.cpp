@@ -11,6 +11,21 @@ namespace {
 constexpr int rounds_at_least = 3;
 constexpr double seconds_a_row = 3;
 
+void print_table(const std::vector<SpeedRow>& rows, const std::vector<double>& best) {
+  fmt::print("{:<56}{:>18}", "", "million clocks/s");
+  for (const SpeedRow& row : rows) {
+    if (!row.column.empty()) fmt::print("{:>14}", row.column);
+  }
+  fmt::print("\n");
+  for (std::size_t i = 0; i < rows.size(); ++i) {
+    fmt::print("{:<56}{:>18.1f}", rows[i].name, best[i]);
+    for (std::size_t reference = 0; reference < rows.size(); ++reference) {
+      if (!rows[reference].column.empty()) fmt::print("{:>14.3g}", best[i] / best[reference]);
+    }
+    fmt::print("\n");
+  }
+}
+
 }  // namespace
 
 double seconds_of(const std::function<void()>& work) {
@@ -28,10 +43,7 @@ void print_speeds(const std::vector<SpeedRow>& rows, int rounds) {
       spent_s[i] += seconds_of([&] { best[i] = std::max(best[i], rows[i].million_clocks_per_s()); });
     }
   }
-  fmt::print("{:<64}{:>16}{:>12}\n", "", "million clocks/s", "of the read");
-  for (std::size_t i = 0; i < rows.size(); ++i) {
-    fmt::print("{:<64}{:>16.1f}{:>11.1f}%\n", rows[i].name, best[i], 100 * best[i] / best.front());
-  }
+  print_table(rows, best);
 }
 
 }  // namespace cistern
