@@ -123,7 +123,7 @@ class Qualification {
 
   bool run_recorded() {
     if (!results_.recorded) return true;
-    RecordedTally tally(results_.recorded->counts);
+    RecordedTally tally(results_.recorded->counts, results_.plan.triggers);
     RecordedSink sink;
     sink.firing = [&](std::int64_t, std::optional<GpsNanoseconds>, std::size_t trigger, const Firing& firing) {
       tally.take(trigger, firing.status);

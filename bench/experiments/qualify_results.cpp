@@ -5,6 +5,7 @@
 #include <algorithm>
 
 #include "bench/experiments/live_figures.hpp"
+#include "bench/experiments/replay_report.hpp"
 #include "bench/experiments/report_parts.hpp"
 #include "bench/experiments/signal_figures.hpp"
 #include "bench/experiments/subjects.hpp"
@@ -94,6 +95,9 @@ std::vector<std::string> qualify_lines(const QualifyResults& results, const Summ
   };
   add(subject_lines(results, summary));
   add(comparison_lines(results));
+  if (results.recorded) {
+    add(recorded_lines(results.plan, results.recorded->counts, results.recorded->file.filename().string()));
+  }
   add({fmt::format(
       "  logic: {} boundary stimuli, {} firings against the specification: {}", results.logic.rows.size(),
       [&] {

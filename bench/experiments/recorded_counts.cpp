@@ -35,12 +35,31 @@ std::string share_condition(const RecordedFacts& facts) {
 
 }  // namespace
 
+RecordedTally::RecordedTally(RecordedCounts& counts, const std::vector<TriggerSettings>& triggers)
+    : counts_(counts), triggers_(triggers), passed_in_trace_(triggers.size(), 0) {
+  counts_.triggers.resize(triggers.size());
+}
+
+bool RecordedTally::fired(TriggerSet set) const {
+  const auto members = members_of(set, triggers_);
+  return std::any_of(members.begin(), members.end(), [this](std::size_t t) { return passed_in_trace_[t] > 0; });
+}
+
+void RecordedTally::compare_stations() {
+  if (!are_comparable(triggers_)) return;
+  RecordedPairs& pairs = counts_.pairs;
+  const bool candidate = fired(TriggerSet::Candidate);
+  ++(fired(TriggerSet::InService) ? (candidate ? pairs.both : pairs.only_in_service)
+                                  : (candidate ? pairs.only_candidate : pairs.neither));
+}
+
 void RecordedTally::take(std::size_t trigger, FiringStatus status) {
   ++counts_.triggers[trigger].firings;
   if (status == FiringStatus::Passed) ++passed_in_trace_[trigger];
 }
 
 void RecordedTally::end_trace(const RecordedTrace& trace) {
+  compare_stations();
   for (std::size_t t = 0; t < counts_.triggers.size(); ++t) {
     TriggerRecordedCounts& own = counts_.triggers[t];
     if (const auto& best = trace.margins[t]) own.margins.push_back(static_cast<double>(best->margin));
@@ -72,6 +91,12 @@ std::vector<MeasuredFigure> recorded_figures(const RecordedCounts& counts, const
     std::sort(margins.begin(), margins.end());
     figures.push_back({"margin_median." + name + ".recorded", std::string(margin_unit(plan.triggers[t].condition.kind)),
                        "best of each trace; at least 0 fires", QuantileBasis{std::move(margins), 0.5}});
+  }
+  if (are_comparable(plan.triggers)) {
+    figures.push_back(
+        {"gain.candidate.recorded", "",
+         "share of the recorded traces that fire the candidate less that of the station in service, paired by trace",
+         PairedBasis{counts.pairs.only_candidate, counts.pairs.only_in_service, counts.traces}});
   }
   return figures;
 }

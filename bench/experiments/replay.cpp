@@ -45,12 +45,6 @@ class BusyStage {
   std::vector<CaptureBook> books_;
 };
 
-RecordedCounts counts_for(std::size_t triggers) {
-  RecordedCounts counts;
-  counts.triggers.resize(triggers);
-  return counts;
-}
-
 /// Rows and counts of one replay.
 class Replay {
  public:
@@ -60,8 +54,7 @@ class Replay {
         triggers_(plan.triggers),
         busy_(scenario),
         directory_(directory),
-        counts_(counts_for(triggers_.size())),
-        tally_(counts_) {
+        tally_(counts_, triggers_) {
     directory_.make_table(RowTable::Firings);
     directory_.make_table(RowTable::Margins);
   }

@@ -38,6 +38,7 @@ std::string or_unsaid(const std::optional<Value>& value, const char* unit) {
 /// Mean power in equal bands of the spectrum, dB relative to one count squared.
 std::vector<double> band_powers_db(const std::vector<double>& spectrum) {
   std::vector<double> bands;
+  if (spectrum.empty()) return bands;  // shorter than one spectrum
   const std::size_t width = (spectrum.size() - 1) / shown_bands;
   for (std::size_t band = 0; band < shown_bands && width > 0; ++band) {
     double power = 0;
