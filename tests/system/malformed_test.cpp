@@ -16,10 +16,13 @@ namespace {
 struct Malformed {
   std::string name;
   std::string arguments;
-  std::string find;                   ///< in the good scenario; empty: nothing is replaced
+  std::string find;  ///< in the good scenario; empty: nothing is replaced
   std::string replace;
-  std::vector<std::string> says;      ///< all in the one line
+  std::vector<std::string> says;  ///< all in the one line
 };
+
+/// The name alone: what ctest shows of a row.
+void PrintTo(const Malformed& row, std::ostream* stream) { *stream << row.name; }
 
 constexpr const char* qualify = "qualify s.toml";
 
@@ -28,13 +31,21 @@ std::vector<Malformed> scenario_rows() {
       {"unknown_key", qualify, "majority = 2", "majorty = 2", {"s.toml:16", "majorty", "nearest: majority"}},
       {"unknown_table", qualify, "[calibration]", "[calibraton]", {"s.toml:7", "calibraton", "calibration"}},
       {"unknown_top_level_key", qualify, "[digitizer]", "speed = 3\n[digitizer]", {"s.toml:1", "speed"}},
-      {"text_for_a_number", qualify, "sample_rate_mhz = 100", "sample_rate_mhz = \"fast\"", {"s.toml:3", "sample_rate_mhz", "number"}},
+      {"text_for_a_number",
+       qualify,
+       "sample_rate_mhz = 100",
+       "sample_rate_mhz = \"fast\"",
+       {"s.toml:3", "sample_rate_mhz", "number"}},
       {"number_for_a_text", qualify, "name = \"tall\"", "name = 7", {"s.toml:12", "name"}},
-      {"float_for_a_whole_number", qualify, "bits = 12", "bits = 12.5", {"s.toml:4", "bits", "whole"}},
+      {"float_for_a_whole_number", qualify, "bits = 12", "bits = 12.5", {"s.toml:4", "bits", "integer"}},
       {"switch_for_a_number", qualify, "bits = 12", "bits = true", {"s.toml:4", "bits"}},
       {"not_a_number", qualify, "sample_rate_mhz = 100", "sample_rate_mhz = nan", {"s.toml:3", "sample_rate_mhz"}},
       {"infinite", qualify, "sample_rate_mhz = 100", "sample_rate_mhz = inf", {"s.toml:3", "sample_rate_mhz"}},
-      {"zero_rate", qualify, "sample_rate_mhz = 100", "sample_rate_mhz = 0", {"s.toml:3", "sample_rate_mhz", "from 0.001"}},
+      {"zero_rate",
+       qualify,
+       "sample_rate_mhz = 100",
+       "sample_rate_mhz = 0",
+       {"s.toml:3", "sample_rate_mhz", "from 0.001"}},
       {"negative_rate", qualify, "sample_rate_mhz = 100", "sample_rate_mhz = -100", {"s.toml:3", "sample_rate_mhz"}},
       {"no_channels", qualify, "channels = 2\n", "", {"s.toml:1", "digitizer", "channels"}},
       {"zero_channels", qualify, "channels = 2", "channels = 0", {"s.toml:2", "channels", "from 1 to 16"}},
@@ -46,36 +57,68 @@ std::vector<Malformed> scenario_rows() {
       {"mixed_list", qualify, "[200, 210]", "[200, \"x\"]", {"s.toml:5", "baseline_counts[1]"}},
       {"baseline_beyond_the_bits", qualify, "[200, 210]", "[200, 4096]", {"baseline_counts", "4095"}},
       {"no_baseline_anywhere", qualify, "baseline_counts = [200, 210]\n", "", {"s.toml", "baseline_counts"}},
-      {"baseline_tracker", qualify, "baseline_counts = [200, 210]", "baseline_counts = [200, 210]\n[digitizer.baseline]\nshift = 4", {"baseline", "not in this version"}},
+      {"baseline_tracker",
+       qualify,
+       "baseline_counts = [200, 210]",
+       "baseline_counts = [200, 210]\n[digitizer.baseline]\nshift = 4",
+       {"baseline", "not in this version"}},
       {"no_digitizer", qualify, "[digitizer]", "[site]", {"s.toml"}},
       {"digitizer_twice", qualify, "[calibration]", "[digitizer]", {"s.toml:7"}},
       {"negative_calibration", qualify, "[140, 138]", "[140, -138]", {"s.toml:8", "height_counts_per_vem"}},
       {"calibration_of_wrong_length", qualify, "[140, 138]", "[140, 138, 139]", {"height_counts_per_vem", "3 values"}},
-      {"vem_level_without_calibration", qualify, "height_counts_per_vem = [140, 138]\n", "", {"level_vem", "height_counts_per_vem"}},
-      {"unknown_kind", qualify, "kind = \"threshold\"", "kind = \"treshold\"", {"s.toml:14", "kind", "nearest: \"threshold\""}},
+      {"vem_level_without_calibration",
+       qualify,
+       "height_counts_per_vem = [140, 138]\n",
+       "",
+       {"level_vem", "height_counts_per_vem"}},
+      {"unknown_kind",
+       qualify,
+       "kind = \"threshold\"",
+       "kind = \"treshold\"",
+       {"s.toml:14", "kind", "nearest: \"threshold\""}},
       {"library_kind", qualify, "kind = \"threshold\"", "kind = \"library\"", {"s.toml:14", "not in this version"}},
       {"rtl_kind", qualify, "kind = \"threshold\"", "kind = \"rtl\"", {"s.toml:14", "not in this version"}},
       {"unknown_role", qualify, "role = \"candidate\"", "role = \"future\"", {"s.toml", "role", "candidate"}},
       {"no_name", qualify, "name = \"tall\"\n", "", {"s.toml:11", "name"}},
       {"name_with_a_blank", qualify, "name = \"tall\"", "name = \"so tall\"", {"s.toml:12", "name", "letters"}},
-      {"name_twice", qualify, "name = \"broad\"", "name = \"tall\"", {"s.toml:18", "tall", "once"}},
-      {"two_levels", qualify, "level_vem = 1.5", "level_vem = 1.5\nlevel_counts = 3", {"s.toml:11", "level_counts", "level_vem", "both"}},
+      {"name_twice", qualify, "name = \"broad\"", "name = \"tall\"", {"s.toml:19", "tall", "once"}},
+      {"two_levels",
+       qualify,
+       "level_vem = 1.5",
+       "level_vem = 1.5\nlevel_counts = 3",
+       {"s.toml:16", "level_counts", "level_vem", "both"}},
       {"no_level", qualify, "level_vem = 1.5\n", "", {"s.toml:11", "level_counts", "level_vem", "neither"}},
-      {"key_of_another_kind", qualify, "level_vem = 1.5", "level_vem = 1.5\nwindow_samples = 9", {"s.toml:16", "window_samples", "threshold"}},
+      {"key_of_another_kind",
+       qualify,
+       "level_vem = 1.5",
+       "level_vem = 1.5\nwindow_samples = 9",
+       {"s.toml:16", "window_samples", "threshold"}},
       {"majority_of_three_of_two", qualify, "majority = 2", "majority = 3", {"majority", "at most 2"}},
       {"majority_zero", qualify, "majority = 2", "majority = 0", {"s.toml:16", "majority", "from 1 to 16"}},
       {"majority_beyond_the_mask", qualify, "majority = 2", "majority = 2\nchannels = [1]", {"majority", "at most 1"}},
       {"mask_of_a_missing_channel", qualify, "majority = 2", "majority = 2\nchannels = [0, 2]", {"channels", "0 to 1"}},
-      {"mask_with_a_channel_twice", qualify, "majority = 2", "majority = 2\nchannels = [1, 1]", {"channels", "twice"}},
+      {"mask_with_a_channel_twice", qualify, "majority = 2", "majority = 2\nchannels = [1, 1]", {"channels", "once"}},
       {"empty_mask", qualify, "majority = 2", "majority = 2\nchannels = []", {"channels", "empty"}},
       {"window_zero", qualify, "window_samples = 150", "window_samples = 0", {"window_samples", "from 1 to 65536"}},
-      {"window_too_long", qualify, "window_samples = 150", "window_samples = 65537", {"window_samples", "from 1 to 65536"}},
-      {"minimum_beyond_the_window", qualify, "min_samples_over = 21", "min_samples_over = 151", {"min_samples_over", "151", "150"}},
+      {"window_too_long",
+       qualify,
+       "window_samples = 150",
+       "window_samples = 65537",
+       {"window_samples", "from 1 to 65536"}},
+      {"minimum_beyond_the_window",
+       qualify,
+       "min_samples_over = 21",
+       "min_samples_over = 151",
+       {"min_samples_over", "151", "150"}},
       {"window_of_no_sample", qualify, "window_samples = 150", "window_ns = 4", {"window", "0 samples"}},
       {"length_zero", qualify, "length_samples = 60", "length_samples = 0", {"length_samples", "from 1 to 65536"}},
       {"prescale_zero", qualify, "majority = 2", "majority = 2\nprescale = 0", {"prescale", "from 1"}},
       {"negative_hold_off", qualify, "majority = 2", "majority = 2\nhold_off_samples = -1", {"hold_off_samples"}},
-      {"rearm_at_level_without_hold_off", qualify, "majority = 2", "majority = 2\nrearm = \"level\"", {"rearm", "hold_off_samples"}},
+      {"rearm_at_level_without_hold_off",
+       qualify,
+       "majority = 2",
+       "majority = 2\nrearm = \"level\"",
+       {"rearm", "hold_off_samples"}},
       {"unknown_rearm", qualify, "majority = 2", "majority = 2\nrearm = \"never\"", {"rearm", "edge"}},
       {"trigger_as_a_single_table", qualify, "[[trigger]]", "[trigger]", {"s.toml"}},
       {"no_trigger", "qualify digitizer.toml", "", "", {"digitizer.toml", "[[trigger]]"}},
@@ -94,29 +137,38 @@ std::vector<Malformed> table_rows() {
       with("latitude_beyond_the_pole", "[site]\nlatitude_deg = 91", {"latitude_deg", "-90 to 90"}),
       with("altitude_in_the_stratosphere", "[site]\naltitude_m = 12000", {"altitude_m", "0 to 2500"}),
       with("tank_without_radius", "[tank]\nradius_m = 0", {"radius_m"}),
-      with("tubes_outside_the_tank", "[tank]\nradius_m = 0.5\ntube_circle_radius_m = 0.7", {"tube_circle_radius_m", "0.5"}),
+      with("tubes_outside_the_tank", "[tank]\nradius_m = 0.5\ntube_circle_radius_m = 0.7",
+           {"tube_circle_radius_m", "0.5"}),
       with("perfect_mirror", "[tank]\nwall_reflectivity = 1", {"wall_reflectivity"}),
       with("negative_noise", "[frontend]\nnoise_rms_mv = -1", {"noise_rms_mv"}),
       with("noise_fully_correlated", "[frontend]\nnoise_correlation = 1", {"noise_correlation"}),
       with("negative_flux", "[muons]\nflux_scale = -1", {"flux_scale"}),
       with("no_capture_buffers", "[station]\ncapture_buffers = 0", {"capture_buffers", "from 1"}),
       with("unknown_overlap", "[station]\noverlap = \"drop\"", {"overlap", "ignore"}),
-      with("capture_longer_than_its_buffer", "[station]\npre_samples = 4000", {"station"}),
+      with("capture_longer_than_its_buffer", "[station]\npre_samples = 40\npost_samples = 40\nmax_samples = 50", {"station"}),
       with("signal_without_sizes", "[[signal]]\nname = \"m\"\nkind = \"muon\"", {"signal", "sizes_vem"}),
       with("signal_of_unknown_kind", "[[signal]]\nname = \"m\"\nkind = \"proton\"\nsizes_vem = [1]", {"kind", "muon"}),
-      with("signal_sizes_that_fall", "[[signal]]\nname = \"m\"\nkind = \"muon\"\nsizes_vem = [2, 1]", {"sizes_vem", "rise"}),
+      with("signal_sizes_that_fall", "[[signal]]\nname = \"m\"\nkind = \"muon\"\nsizes_vem = [2, 1]",
+           {"sizes_vem", "rise"}),
       with("signal_of_no_size", "[[signal]]\nname = \"m\"\nkind = \"muon\"\nsizes_vem = [0]", {"sizes_vem"}),
-      with("block_longer_than_live_time", "[qualify]\nlive_time_s = 1\nquick_live_time_s = 1\nblock_s = 2", {"block_s"}),
+      with("block_longer_than_live_time", "[qualify]\nlive_time_s = 1\nquick_live_time_s = 1\nblock_s = 2",
+           {"block_s"}),
       with("no_signals_per_point", "[qualify]\nsignals_per_point = 0", {"signals_per_point"}),
       with("level_factor_zero", "[rate]\nlevel_factors = [0, 1]", {"level_factors"}),
       with("selection_of_nothing", "[traces]\nselection = \"triggered_by:\"", {"selection", "triggered_by:NAME"}),
       with("resampling", "[traces]\nresample = true", {"resample", "not in this version"}),
-      with("requirement_without_bound", "[requirements.r]\nfigure = \"background_rate.long\"", {"requirements.r", "at_most", "neither"}),
-      with("requirement_with_two_bounds", "[requirements.r]\nfigure = \"background_rate.long\"\nat_most = 2\nat_least = 1", {"requirements.r", "both"}),
+      with("requirement_without_bound", "[requirements.r]\nfigure = \"background_rate.long\"",
+           {"requirements.r", "at_most", "neither"}),
+      with("requirement_with_two_bounds",
+           "[requirements.r]\nfigure = \"background_rate.long\"\nat_most = 2\nat_least = 1",
+           {"requirements.r", "both"}),
       with("requirement_without_figure", "[requirements.r]\nat_most = 2", {"requirements.r", "figure"}),
-      with("requirement_on_no_figure", "[requirements.r]\nfigure = \"efficiency.lung.muon.3_vem\"\nat_least = 0.5", {"requirements.r", "nearest"}),
-      with("requirement_with_certainty", "[requirements.r]\nfigure = \"a.b\"\nat_most = 2\nconfidence = 1", {"confidence"}),
-      with("requirement_named_with_a_blank", "[requirements.\"a b\"]\nfigure = \"a.b\"\nat_most = 2", {"a b", "letters"}),
+      with("requirement_on_no_figure", "[requirements.r]\nfigure = \"efficiency.lung.muon.3_vem\"\nat_least = 0.5",
+           {"requirements.r", "nearest"}),
+      with("requirement_with_certainty", "[requirements.r]\nfigure = \"a.b\"\nat_most = 2\nconfidence = 1",
+           {"confidence"}),
+      with("requirement_named_with_a_blank", "[requirements.\"a b\"]\nfigure = \"a.b\"\nat_most = 2",
+           {"a b", "letters"}),
   };
 }
 
@@ -142,7 +194,7 @@ std::vector<Malformed> call_rows() {
       call("set_unknown_entry", "qualify s.toml --set trigger.lung.majority=1", {"--set", "nearest: long"}),
       call("set_unknown_key", "qualify s.toml --set trigger.long.majorty=1", {"--set", "nearest: majority"}),
       call("set_value_out_of_range", "qualify s.toml --set trigger.long.majority=9", {"majority", "at most 2"}),
-      call("set_value_that_is_no_toml", "qualify s.toml --set trigger.long.name=long", {"--set", "TOML"}),
+      call("set_value_that_is_no_toml", "qualify s.toml --set trigger.long.kind=threshold", {"--set", "TOML"}),
       call("set_too_deep", "qualify s.toml --set digitizer.bits.x=1", {"--set", "digitizer"}),
       call("out_is_a_file", "qualify s.toml --out s.toml", {"--out", "file"}),
       call("out_holds_something_else", "qualify s.toml --out taken", {"--out", "taken"}),
@@ -163,7 +215,8 @@ std::vector<Malformed> call_rows() {
       call("describe_a_missing_file", "traces describe none.npy", {"none.npy"}),
       call("make_of_an_unknown_kind", "traces make t.toml --out x.npy --kind proton", {"proton", "nearest"}),
       call("make_without_traces", "traces make t.toml --out x.npy --traces 0", {"--traces"}),
-      call("make_with_the_onset_outside", "traces make t.toml --out x.npy --kind muon --onset-sample 5000", {"--onset-sample"}),
+      call("make_with_the_onset_outside", "traces make t.toml --out x.npy --kind muon --onset-sample 5000",
+           {"--onset-sample"}),
       call("make_with_a_start_in_npy", "traces make t.toml --out x.npy --start-ns 5", {"--start-ns", ".h5"}),
       call("calibrate_without_tank", "traces calibrate s.toml", {"[tank]"}),
   };
@@ -209,12 +262,15 @@ TEST_P(MalformedInput, gives_exit_2_and_one_useful_line) {
   EXPECT_EQ(run.output, "");
   EXPECT_EQ(std::count(run.errors.begin(), run.errors.end(), '\n'), 1) << run.errors;
   EXPECT_EQ(run.errors.rfind("cistern: ", 0), 0U) << run.errors;
-  for (const std::string& word : row.says) EXPECT_NE(run.errors.find(word), std::string::npos) << "no \"" << word << "\" in: " << run.errors;
-  EXPECT_FALSE(std::filesystem::exists(directory.path() / "cistern-run" / "qualify")) << "a run directory was left behind";
+  for (const std::string& word : row.says)
+    EXPECT_NE(run.errors.find(word), std::string::npos) << "no \"" << word << "\" in: " << run.errors;
+  EXPECT_FALSE(std::filesystem::exists(directory.path() / "cistern-run" / "qualify"))
+      << "a run directory was left behind";
   EXPECT_FALSE(std::filesystem::exists(directory.path() / "out.npy"));
 }
 
-INSTANTIATE_TEST_SUITE_P(Table, MalformedInput, ::testing::ValuesIn(all_rows()), [](const auto& row) { return row.param.name; });
+INSTANTIATE_TEST_SUITE_P(Table, MalformedInput, ::testing::ValuesIn(all_rows()),
+                         [](const auto& row) { return row.param.name; });
 
 }  // namespace
 }  // namespace cistern
