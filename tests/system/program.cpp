@@ -34,7 +34,8 @@ std::string ScratchDirectory::read(const std::string& name) const {
 }
 
 ProgramRun run_cistern(const ScratchDirectory& directory, const std::string& arguments) {
-  const std::string command = "cd '" + directory.path().string() + "' && '" CISTERN_PROGRAM "' " + arguments + " >.out 2>.err";
+  const std::string command =
+      "cd '" + directory.path().string() + "' && '" CISTERN_PROGRAM "' " + arguments + " >.out 2>.err";
   const int status = std::system(command.c_str());
   ProgramRun run;
   run.status = WIFEXITED(status) ? WEXITSTATUS(status) : 128 + WTERMSIG(status);

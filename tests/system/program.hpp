@@ -7,7 +7,7 @@
 namespace cistern {
 
 struct ProgramRun {
-  int status{0};              ///< exit status; 128 + signal when killed
+  int status{0};  ///< exit status; 128 + signal when killed
   std::string output;
   std::string errors;
 };
