@@ -1,13 +1,9 @@
 #include "traces/files/trace_file.hpp"
 
-#include <fcntl.h>
 #include <fmt/format.h>
-#include <unistd.h>
 
 #include <algorithm>
 #include <cctype>
-#include <cerrno>
-#include <cstring>
 
 #include "traces/files/file_facts.hpp"
 #include "traces/files/formats.hpp"
@@ -16,60 +12,58 @@ namespace cistern {
 namespace fs = std::filesystem;
 namespace {
 
-/// A writer under a temporary name beside its target; renamed when it finishes, removed otherwise.
-class RenamingWriter : public TraceWriter {
- public:
-  RenamingWriter(fs::path target, const TraceFileInfo& info) : target_(std::move(target)), temporary_(temporary_name(target_)) {
-    switch (format_of(target_)) {
-      case TraceFormat::Csv: writer_ = create_csv(temporary_, info); break;
-      case TraceFormat::Npy: writer_ = create_npy(temporary_, info); break;
-      case TraceFormat::Hdf5: writer_ = create_hdf5(temporary_, info); break;
-    }
+std::unique_ptr<TraceWriter> create_in(const TemporaryFile& file, const TraceFileInfo& info) {
+  switch (format_of(file.target())) {
+    case TraceFormat::Csv: return create_csv(file, info);
+    case TraceFormat::Npy: return create_npy(file, info);
+    case TraceFormat::Hdf5: return create_hdf5(file, info);
   }
-  ~RenamingWriter() override {
-    writer_.reset();
-    std::error_code ignored;
-    if (!finished_) fs::remove(temporary_, ignored);
-  }
+  report_bug("known trace format", __FILE__, __LINE__);
+}
 
-  void append(const TraceBlock& block) override { writer_->append(block); }
+/// Checks that the blocks make whole traces, and shows the file only when it is finished.
+class PublishingWriter : public TraceWriter {
+ public:
+  PublishingWriter(const fs::path& target, const TraceFileInfo& info)
+      : info_(info), file_(target), writer_(create_in(file_, info)) {}
+
+  void append(const TraceBlock& block) override {
+    CISTERN_ASSERT(block.codes.channels() == info_.channels);
+    sample_ += block.codes.samples();
+    CISTERN_ASSERT(block.last_of_trace ? sample_ == info_.samples : sample_ < info_.samples);
+    writer_->append(block);
+    if (!block.last_of_trace) return;
+    sample_ = 0;
+    ++traces_;
+  }
 
   void finish(const std::vector<TruthColumn>& truth) override {
-    if (!truth.empty() && format_of(target_) != TraceFormat::Hdf5) throw InputError(target_.string(), "cannot hold truth columns; expected an .h5 file");
+    CISTERN_ASSERT(sample_ == 0 && traces_ >= 1 && traces_ == info_.traces.value_or(traces_));
+    for (const TruthColumn& column : truth) {
+      CISTERN_ASSERT(column.values.size() == static_cast<std::size_t>(traces_));
+    }
+    if (!truth.empty() && format_of(file_.target()) != TraceFormat::Hdf5) {
+      throw InputError(file_.target().string(), "cannot hold truth columns; expected an .h5 file");
+    }
     writer_->finish(truth);
     writer_.reset();
-    sync();
-    std::error_code error;
-    fs::rename(temporary_, target_, error);
-    if (error) throw SystemFault(fmt::format("{}: {}", target_.string(), error.message()));
-    finished_ = true;
+    file_.publish();
   }
 
  private:
-  static fs::path temporary_name(const fs::path& target) {
-    const fs::path folder = target.parent_path().empty() ? fs::path(".") : target.parent_path();
-    if (!fs::is_directory(folder)) throw InputError(target.string(), "its folder does not exist; expected an existing one");
-    if (fs::is_directory(target)) throw InputError(target.string(), "is a directory; expected a file to write");
-    return folder / ("." + target.filename().string() + ".part");
-  }
-  void sync() const {
-    const int descriptor = ::open(temporary_.c_str(), O_RDONLY);
-    const bool synced = descriptor >= 0 && ::fsync(descriptor) == 0;
-    if (descriptor >= 0) ::close(descriptor);
-    if (!synced) throw SystemFault(fmt::format("{}: {}", temporary_.string(), std::strerror(errno)));
-  }
-
-  fs::path target_;
-  fs::path temporary_;
+  TraceFileInfo info_;
+  TemporaryFile file_;
   std::unique_ptr<TraceWriter> writer_;
-  bool finished_{false};
+  std::size_t sample_{0};  ///< of the trace that is being written
+  std::int64_t traces_{0};
 };
 
 }  // namespace
 
 TraceFormat format_of(const fs::path& path) {
   std::string ending = path.extension().string();
-  std::transform(ending.begin(), ending.end(), ending.begin(), [](unsigned char c) { return static_cast<char>(std::tolower(c)); });
+  std::transform(ending.begin(), ending.end(), ending.begin(),
+                 [](unsigned char c) { return static_cast<char>(std::tolower(c)); });
   if (ending == ".csv") return TraceFormat::Csv;
   if (ending == ".npy") return TraceFormat::Npy;
   if (ending == ".h5" || ending == ".hdf5") return TraceFormat::Hdf5;
@@ -89,7 +83,9 @@ std::unique_ptr<TraceReader> open_trace_file(const fs::path& path) {
 
 std::unique_ptr<TraceWriter> create_trace_file(const fs::path& path, const TraceFileInfo& info) {
   CISTERN_ASSERT(info.channels >= 1 && info.channels <= 16 && info.samples >= 1);
-  return std::make_unique<RenamingWriter>(path, info);
+  const TraceFormat format = format_of(path);
+  CISTERN_ASSERT(format != TraceFormat::Npy || info.traces.has_value());
+  return std::make_unique<PublishingWriter>(path, info);
 }
 
 }  // namespace cistern

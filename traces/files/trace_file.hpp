@@ -23,24 +23,24 @@ enum class TraceFormat { Csv, Npy, Hdf5 };
 /// What a file says about its traces; absent where it says nothing.
 struct TraceFileInfo {
   std::size_t channels{0};
-  std::size_t samples{0};                              ///< per trace; CSV: of the first trace
-  std::optional<std::int64_t> traces;                  ///< unknown until the end for CSV
+  std::size_t samples{0};              ///< per trace; CSV: of the first trace
+  std::optional<std::int64_t> traces;  ///< unknown until the end for CSV
   std::optional<double> sample_rate_mhz;
   std::optional<std::int32_t> bits;
-  std::optional<std::vector<std::int32_t>> baseline_counts;       ///< one per channel
-  std::optional<std::vector<double>> height_counts_per_vem;       ///< one per channel
-  std::optional<std::vector<double>> area_counts_per_vem;         ///< one per channel
-  std::optional<std::string> selection;                ///< "unbiased" or "triggered_by:NAME"
+  std::optional<std::vector<std::int32_t>> baseline_counts;  ///< one per channel
+  std::optional<std::vector<double>> height_counts_per_vem;  ///< one per channel
+  std::optional<std::vector<double>> area_counts_per_vem;    ///< one per channel
+  std::optional<std::string> selection;                      ///< "unbiased" or "triggered_by:NAME"
   std::optional<double> live_time_s;
-  bool contiguous{false};                              ///< each trace goes on where the last ended
+  bool contiguous{false};  ///< each trace goes on where the last ended
 };
 
 /// A stretch of one trace, all channels. Valid until the next call of `next`.
 struct TraceBlock {
   std::int64_t trace{0};
-  std::int64_t first_sample{0};                        ///< of the block, within its trace
+  std::int64_t first_sample{0};  ///< of the block, within its trace
   bool last_of_trace{false};
-  std::optional<GpsNanoseconds> start_ns;              ///< of the trace's sample 0
+  std::optional<GpsNanoseconds> start_ns;  ///< of the trace's sample 0
   CodesView codes;
 };
 
@@ -52,7 +52,8 @@ class TraceReader {
   [[nodiscard]] virtual const TraceFileInfo& info() const = 0;
   /// Bits to check codes against where the file says none. Call before the first `next`.
   virtual void expect_bits(std::int32_t bits) = 0;
-  /// At most `max_samples` samples (>= 1) of the current trace; false at the end of the file.
+  /// The next samples of the current trace: at least one, at most `max_samples` (>= 1), and no more than
+  /// fit into a few megabytes. False at the end of the file.
   [[nodiscard]] virtual bool next(std::size_t max_samples, TraceBlock& block) = 0;
 };
 
