@@ -101,21 +101,28 @@ ReportTable paired_table(const std::vector<PairedPoint>& points) {
   return table;
 }
 
-/// The first signal that one station found and the other did not, for a picture.
+/// One placed signal, for a picture.
 struct Example {
   std::size_t point{0};
   std::int32_t index{0};
 };
 
+/// A signal that one station found and the other did not, of the kind where that happens most often.
 std::optional<Example> find_example(const EfficiencyRun& run, const Subject& finds, const Subject& misses) {
+  std::optional<Example> example;
+  std::int64_t most = 0;
   for (std::size_t p = 0; p < run.points().size(); ++p) {
     const auto found = delays_of(finds, run.responses(p));
     const auto missed = delays_of(misses, run.responses(p));
+    std::vector<std::int32_t> discordant;
     for (std::size_t i = 0; i < found.size(); ++i) {
-      if (found[i] >= 0 && missed[i] < 0) return Example{p, static_cast<std::int32_t>(i)};
+      if (found[i] >= 0 && missed[i] < 0) discordant.push_back(static_cast<std::int32_t>(i));
     }
+    if (static_cast<std::int64_t>(discordant.size()) <= most) continue;
+    most = static_cast<std::int64_t>(discordant.size());
+    example = Example{p, discordant.front()};
   }
-  return {};
+  return example;
 }
 
 /// The member that fired first, else the first member.
