@@ -1,10 +1,16 @@
 #include "bench/report/html_text.hpp"
 
+#include <fmt/format.h>
+
+#include <cmath>
+
 namespace cistern {
 namespace {
 
 void replace_all(std::string& text, std::string_view from, std::string_view to) {
-  for (auto at = text.find(from); at != std::string::npos; at = text.find(from, at + to.size())) text.replace(at, from.size(), to);
+  for (auto at = text.find(from); at != std::string::npos; at = text.find(from, at + to.size())) {
+    text.replace(at, from.size(), to);
+  }
 }
 
 }  // namespace
@@ -43,6 +49,10 @@ std::string anchor_of(std::string_view heading) {
     }
   }
   return id.empty() ? "part" : id;
+}
+
+std::string number_or_dash(const std::optional<double>& value) {
+  return value && std::isfinite(*value) ? fmt::format("{:.4g}", *value) : "-";
 }
 
 }  // namespace cistern

@@ -1,6 +1,7 @@
 #pragma once
 /// \file
 /// Text made safe for HTML and for a script element. Internal to the report.
+#include <optional>
 #include <string>
 #include <string_view>
 
@@ -14,5 +15,8 @@ namespace cistern {
 
 /// A heading as an id: lower-case letters, digits and dashes.
 [[nodiscard]] std::string anchor_of(std::string_view heading);
+
+/// Four significant digits; "-" for what is absent or not finite.
+[[nodiscard]] std::string number_or_dash(const std::optional<double>& value);
 
 }  // namespace cistern

@@ -1,104 +1,93 @@
-// One chart: lines with markers, limits as bars, straight markers across.
-import { faint, font, ink, look, shown } from './series.js';
+// One chart: lines with markers, limits, straight markers across, a legend and tooltips.
+import { axisOption, placeable } from './axis.js';
+import { band, limitBars } from './limits.js';
+import { escaped, font, ink, look, shown } from './series.js';
 
-const isLog = (axis) => axis.scale === 'log';
+const manyPoints = 25;
+const legendRow = 22;
+const legendSample = 46;
 
-// On a logarithmic axis a value of 0 has no place: such points are left out, and their upper limit stays.
-function placeable(axis, value) {
-  return value !== null && value !== undefined && (!isLog(axis) || value > 0);
-}
+// A line that lies on another one shows beside it: the ones below are wider, their markers larger.
+const lineWidth = (order) => Math.max(1.5, 3.6 - 0.7 * order);
+const symbolSize = (order) => Math.max(6, 11 - 1.7 * order);
 
-function axisOption(axis, values, name) {
-  const usable = values.filter((v) => placeable(axis, v));
-  const option = {
-    type: isLog(axis) ? 'log' : 'value',
-    name: axis.label,
-    nameLocation: 'middle',
-    nameGap: name === 'x' ? 30 : 52,
-    nameTextStyle: { color: ink, fontFamily: font, fontSize: 13 },
-    axisLabel: { color: ink, fontFamily: font, formatter: shown, hideOverlap: true },
-    axisLine: { show: true, lineStyle: { color: ink } },
-    axisTick: { show: true, lineStyle: { color: ink } },
-    splitLine: { lineStyle: { color: faint, width: 0.6 } },
-    scale: true,
-  };
-  if (axis.low !== null) option.min = axis.low;
-  if (axis.high !== null) option.max = axis.high;
-  if (isLog(axis) && usable.length > 0) {
-    const low = Math.min(...usable);
-    const high = Math.max(...usable);
-    if (name === 'x') {
-      // Measured places are few: they are the ticks.
-      option.min = low * 0.85;
-      option.max = high * 1.18;
-      const places = [...new Set(usable)].sort((a, b) => a - b);
-      option.axisTick.customValues = places;
-      option.axisLabel.customValues = places;
-      option.splitLine = { show: false };
-    }
-  }
-  return option;
-}
-
-// Limits as a bar with caps.
-function limitsSeries(series, index, chart) {
-  const colour = look(index).colour;
-  const rows = series.points.filter((p) => p.high !== null && placeable(chart.y, p.high)).map((p) => [p.x, p.low, p.high]);
+function lineSeries(series, order, chart) {
+  const { colour, dash, symbol } = look(series.look);
+  const points = series.points.filter((p) => placeable(chart.x, p.x) && placeable(chart.y, p.y));
+  const stride = points.length > manyPoints ? Math.ceil(points.length / 10) : 1;
   return {
-    type: 'custom',
+    type: 'line',
     name: series.name,
-    silent: true,
-    data: rows,
-    encode: { x: 0, y: [1, 2] },
-    renderItem(params, api) {
-      const high = api.coord([api.value(0), api.value(2)]);
-      const low = placeable(chart.y, api.value(1)) ? api.coord([api.value(0), api.value(1)]) : [high[0], params.coordSys.y + params.coordSys.height];
-      const bottom = Math.min(low[1], params.coordSys.y + params.coordSys.height);
-      const style = { stroke: colour, lineWidth: 1.2, fill: 'none' };
-      const line = (x1, y1, x2, y2) => ({ type: 'line', shape: { x1, y1, x2, y2 }, style });
-      return {
-        type: 'group',
-        children: [line(high[0], high[1], high[0], bottom), line(high[0] - 3, high[1], high[0] + 3, high[1]), line(high[0] - 3, bottom, high[0] + 3, bottom)],
-      };
-    },
+    step: series.draw === 'step' ? 'end' : false,
+    data: points.map((p, i) => ({ value: [p.x, p.y, p.low, p.high], symbol: i % stride === 0 ? symbol : 'none' })),
+    symbol,
+    symbolSize: symbolSize(order),
+    showAllSymbol: true,
+    itemStyle: { color: colour },
+    lineStyle: { color: colour, type: dash, width: series.draw === 'points' ? 0 : lineWidth(order) },
   };
 }
 
 function markerLines(markers) {
+  const label = { formatter: (mark) => mark.name, color: ink, fontFamily: font, fontSize: 12 };
   return {
-    silent: true,
-    symbol: 'none',
-    lineStyle: { color: ink, type: [3, 3], width: 1 },
-    label: { formatter: (p) => p.name, color: ink, fontFamily: font, fontSize: 12, position: 'insideEndTop' },
-    data: markers.map((m) => (m.vertical ? { name: m.label, xAxis: m.at } : { name: m.label, yAxis: m.at })),
+    type: 'line',
+    data: [],
+    markLine: {
+      silent: true,
+      symbol: 'none',
+      lineStyle: { color: ink, type: [3, 3], width: 1.2 },
+      data: markers.map((m) => (m.vertical
+        ? { name: m.label, xAxis: m.at, label: { ...label, position: 'end' } }
+        : { name: m.label, yAxis: m.at, label: { ...label, position: 'insideEndTop' } })),
+    },
   };
 }
 
-export function chartOption(chart) {
-  const lines = chart.series.map((series, index) => ({
-    type: 'line',
-    name: series.name,
-    data: series.points.filter((p) => placeable(chart.x, p.x) && placeable(chart.y, p.y)).map((p) => [p.x, p.y, p.low, p.high]),
-    symbol: look(index).symbol,
-    symbolSize: 8,
-    itemStyle: { color: look(index).colour },
-    lineStyle: { color: look(index).colour, type: look(index).dash, width: 2 },
-    markLine: index === 0 && chart.markers.length > 0 ? markerLines(chart.markers) : undefined,
-  }));
-  const limits = chart.series.map((series, index) => limitsSeries(series, index, chart));
-  const xs = chart.series.flatMap((s) => s.points.map((p) => p.x));
-  const ys = chart.series.flatMap((s) => s.points.flatMap((p) => [p.y, p.low, p.high]));
+function tooltip(chart) {
+  return {
+    trigger: 'item',
+    confine: true,
+    textStyle: { color: ink, fontFamily: font, fontSize: 13 },
+    formatter(point) {
+      const [x, y, low, high] = point.value;
+      const limits = high === null ? '' : ` (${shown(low)} to ${shown(high)})`;
+      return [`<strong>${escaped(point.seriesName)}</strong>`, `${escaped(chart.x.label)}: ${shown(x)}`, `${escaped(chart.y.label)}: ${shown(y)}${limits}`].join('<br>');
+    },
+  };
+}
+
+const legendText = (series) => (series.remark ? `${series.name} (${series.remark})` : series.name);
+
+const legendEntry = (series) => (series.draw === 'band' ? { name: series.name, icon: 'rect', itemStyle: { opacity: 0.3 } } : { name: series.name });
+
+// An estimate that errs on the wide side: 8 pixels a letter.
+function legendRows(chart, width) {
+  const widths = chart.series.map((series) => legendSample + 26 + 8 * legendText(series).length);
+  return Math.max(1, Math.ceil(widths.reduce((sum, one) => sum + one, 0) / width));
+}
+
+export function chartOption(chart, width, height) {
+  const xs = chart.series.flatMap((series) => series.points.map((p) => p.x));
+  const ys = chart.series.flatMap((series) => series.points.flatMap((p) => [p.y, p.low, p.high]));
+  const texts = new Map(chart.series.map((series) => [series.name, legendText(series)]));
+  const hasUprights = chart.markers.some((marker) => marker.vertical);
+  const series = chart.series.flatMap((one, order) => (one.draw === 'band' ? [band(one, chart)] : [lineSeries(one, order, chart), limitBars(one, chart)]));
   return {
     animation: false,
     textStyle: { fontFamily: font, color: ink },
-    grid: { left: 76, right: 28, top: 46, bottom: 54 },
-    legend: { top: 4, itemWidth: 46, itemHeight: 10, textStyle: { color: ink, fontFamily: font, fontSize: 13 }, data: chart.series.map((s) => s.name) },
-    tooltip: {
-      trigger: 'item',
-      formatter: (p) => `${p.seriesName}<br>${chart.x.label}: ${shown(p.value[0])}<br>${chart.y.label}: ${shown(p.value[1])} (${shown(p.value[2])} to ${shown(p.value[3])})`,
+    grid: { left: 80, right: 28, top: 20 + legendRow * legendRows(chart, width) + (hasUprights ? 18 : 0), bottom: 56, outerBoundsMode: 'none' },
+    legend: {
+      top: 4,
+      itemWidth: legendSample,
+      itemHeight: 10,
+      textStyle: { color: ink, fontFamily: font, fontSize: 13 },
+      data: chart.series.map(legendEntry),
+      formatter: (name) => texts.get(name),
     },
-    xAxis: axisOption(chart.x, xs, 'x'),
-    yAxis: axisOption(chart.y, ys, 'y'),
-    series: [...lines, ...limits],
+    tooltip: tooltip(chart),
+    xAxis: axisOption(chart.x, xs, true, width - 110),
+    yAxis: axisOption(chart.y, ys, false, height - 60),
+    series: chart.markers.length > 0 ? [...series, markerLines(chart.markers)] : series,
   };
 }

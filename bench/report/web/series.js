@@ -1,25 +1,39 @@
-// What sets series apart without colour: marker, dash and a name in the legend.
-export const looks = [
-  { colour: '#1d4f76', dash: 'solid', symbol: 'circle' },
-  { colour: '#a8540f', dash: [7, 4], symbol: 'rect' },
-  { colour: '#3a7046', dash: [2, 3], symbol: 'triangle' },
-  { colour: '#6d4680', dash: [10, 3, 2, 3], symbol: 'diamond' },
-  { colour: '#4a4f55', dash: [4, 2], symbol: 'emptyCircle' },
-  { colour: '#8a2b45', dash: [12, 4], symbol: 'emptyRect' },
-];
+// What sets series apart without colour: marker, dash and a name in the legend. The colours differ in lightness
+// and keep at least 3:1 to the paper.
+const colours = ['#3b82bd', '#7a2a0c', '#4d9a5f', '#5b2160', '#14181c', '#b98427'];
+const dashes = ['solid', [7, 4], [2, 3], [10, 3, 2, 3], [14, 4], [5, 2, 2, 2, 2, 2]];
+const symbols = ['circle', 'rect', 'triangle', 'diamond', 'emptyCircle', 'emptyRect'];
 
 export const ink = '#22262b';
-export const faint = '#c9cdd2';
+export const soft = '#5a6068';
+export const faint = '#d5d8dc';
 export const font = 'system-ui, "Segoe UI", "DejaVu Sans", sans-serif';
 
+/** After six series the colours come again, with other dashes and markers. */
 export function look(index) {
-  return looks[index % looks.length];
+  const round = Math.floor(index / colours.length);
+  const at = (list, shift) => list[(index + shift) % list.length];
+  return { colour: at(colours, 0), dash: at(dashes, round), symbol: at(symbols, 2 * round) };
 }
 
-/** A number for people: three significant digits, powers of ten where they are shorter. */
-export function shown(value) {
-  if (value === null || value === undefined) return '-';
+const raised = '⁰¹²³⁴⁵⁶⁷⁸⁹';
+
+function power_of_ten(exponent) {
+  const digits = [...String(Math.abs(exponent))].map((digit) => raised[Number(digit)]).join('');
+  return `10${exponent < 0 ? '⁻' : ''}${digits}`;
+}
+
+/** A number for people; very large and very small ones with a power of ten. */
+export function shown(value, digits = 4, plain = { from: 1e-3, below: 1e5 }) {
+  if (value === null || value === undefined || !Number.isFinite(value)) return '-';
   const size = Math.abs(value);
-  if (size !== 0 && (size >= 1e5 || size < 1e-3)) return value.toExponential(1).replace('e+', 'e');
-  return String(Number(value.toPrecision(3)));
+  if (size === 0 || (size >= plain.from && size < plain.below)) return String(Number(value.toPrecision(digits)));
+  const [mantissa, exponent] = value.toExponential(digits - 1).split('e').map(Number);
+  return mantissa === 1 ? power_of_ten(exponent) : `${mantissa}·${power_of_ten(exponent)}`;
+}
+
+/** Names come from scenarios: never let one become markup. */
+export function escaped(text) {
+  const entities = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' };
+  return String(text).replace(/[&<>"']/g, (c) => entities[c]);
 }
