@@ -1,7 +1,7 @@
 // One chart: lines with markers, limits, straight markers across, a legend and tooltips.
 import { axisOption, placeable } from './axis.js';
 import { band, limitBars } from './limits.js';
-import { escaped, font, ink, look, shown } from './series.js';
+import { cut, escaped, font, ink, letterWidth, look, shown } from './series.js';
 
 const manyPoints = 25;
 const legendRow = 22;
@@ -57,20 +57,19 @@ function tooltip(chart) {
   };
 }
 
-const legendText = (series) => (series.remark ? `${series.name} (${series.remark})` : series.name);
+const legendText = (series, width) => cut(series.remark ? `${series.name} (${series.remark})` : series.name, width - legendSample - 40);
 
 const legendEntry = (series) => (series.draw === 'band' ? { name: series.name, icon: 'rect', itemStyle: { opacity: 0.3 } } : { name: series.name });
 
-// An estimate that errs on the wide side: 8 pixels a letter.
 function legendRows(chart, width) {
-  const widths = chart.series.map((series) => legendSample + 26 + 8 * legendText(series).length);
+  const widths = chart.series.map((series) => legendSample + 26 + letterWidth * legendText(series, width).length);
   return Math.max(1, Math.ceil(widths.reduce((sum, one) => sum + one, 0) / width));
 }
 
 export function chartOption(chart, width, height) {
   const xs = chart.series.flatMap((series) => series.points.map((p) => p.x));
   const ys = chart.series.flatMap((series) => series.points.flatMap((p) => [p.y, p.low, p.high]));
-  const texts = new Map(chart.series.map((series) => [series.name, legendText(series)]));
+  const texts = new Map(chart.series.map((series) => [series.name, legendText(series, width)]));
   const hasUprights = chart.markers.some((marker) => marker.vertical);
   const series = chart.series.flatMap((one, order) => (one.draw === 'band' ? [band(one, chart)] : [lineSeries(one, order, chart), limitBars(one, chart)]));
   return {

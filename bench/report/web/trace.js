@@ -1,10 +1,11 @@
 // One example trace: a strip per channel, with level, window, onset and firing drawn in.
-import { faint, font, ink, look, soft } from './series.js';
+import { cut, faint, font, ink, look, soft } from './series.js';
 
 const stripHeight = 96;
 const gap = 16;
 const top = 44;
 const footBar = 5;
+const roomForNames = 240;
 const small = { color: ink, fontFamily: font, fontSize: 11 };
 
 export function traceHeight(trace) {
@@ -68,7 +69,7 @@ function marks(trace, channel, isFirst, ns) {
     found.push({ xAxis: ns(trace.onset_sample), lineStyle: { color: ink, type: [2, 3], width: 1.2 }, label: label('onset', { show: isFirst, align: 'right' }) });
   }
   if (trace.firing_sample !== null) {
-    found.push({ xAxis: ns(trace.firing_sample), lineStyle: { color: ink, type: 'solid', width: 2 }, label: label(`${trace.trigger} fires`, { show: isFirst, align: 'left' }) });
+    found.push({ xAxis: ns(trace.firing_sample), lineStyle: { color: ink, type: 'solid', width: 2 }, label: label(cut(`${trace.trigger} fires`, roomForNames), { show: isFirst, align: 'left' }) });
   }
   return found;
 }
