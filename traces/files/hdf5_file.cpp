@@ -48,8 +48,12 @@ Hdf5Handle open_hdf5_file(const std::filesystem::path& path) {
     throw InputError(path.string(), "does not start as an HDF5 file does; expected HDF5 with a dataset /codes");
   }
   Hdf5Handle file(H5Fopen(path.c_str(), H5F_ACC_RDONLY, H5P_DEFAULT), H5Fclose);
-  if (!file.is_open()) throw InputError(path.string(), "cannot be read, expected an undamaged HDF5 file");
+  if (!file.is_open()) refuse_damaged_hdf5(path);
   return file;
+}
+
+void refuse_damaged_hdf5(const std::filesystem::path& path) {
+  throw InputError(path.string(), "cannot be read, expected an undamaged HDF5 file");
 }
 
 Hdf5Handle open_hdf5_codes(const Hdf5Handle& file, const std::string& name) {

@@ -20,6 +20,9 @@ struct Hdf5Codes {
 /// InputError unless it is an HDF5 file.
 [[nodiscard]] Hdf5Handle open_hdf5_file(const std::filesystem::path& path);
 
+/// InputError for a file on which HDF5 crashes.
+[[noreturn]] void refuse_damaged_hdf5(const std::filesystem::path& path);
+
 /// /codes, with a cache of bounded size for its chunks. InputError when there is none.
 [[nodiscard]] Hdf5Handle open_hdf5_codes(const Hdf5Handle& file, const std::string& name);
 

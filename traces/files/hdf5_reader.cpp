@@ -7,6 +7,7 @@
 #include "traces/files/hdf5_facts.hpp"
 #include "traces/files/hdf5_file.hpp"
 #include "traces/files/hdf5_starts.hpp"
+#include "traces/files/rehearsal.hpp"
 #include "traces/files/slab_reader.hpp"
 
 namespace cistern {
@@ -58,14 +59,25 @@ class Hdf5Source : public CodesSource {
   StartsReader starts_;
 };
 
-}  // namespace
-
-std::unique_ptr<TraceReader> open_hdf5(const std::filesystem::path& path) {
+std::unique_ptr<TraceReader> open_reader(const std::filesystem::path& path) {
   auto source = std::make_unique<Hdf5Source>(path);
   const Hdf5Codes shape = source->shape();
   return std::make_unique<SlabReader>(path.string(), source->info(),
                                       choose_slab(shape.channels, shape.samples, shape.chunk), shape.is_unsigned,
                                       std::move(source));
+}
+
+/// All that is read before the first codes, and these.
+void read_beginning(const std::filesystem::path& path) {
+  TraceBlock block;
+  (void)open_reader(path)->next(1, block);
+}
+
+}  // namespace
+
+std::unique_ptr<TraceReader> open_hdf5(const std::filesystem::path& path) {
+  if (!comes_to_an_end([&] { read_beginning(path); })) refuse_damaged_hdf5(path);
+  return open_reader(path);
 }
 
 }  // namespace cistern

@@ -6,6 +6,7 @@
 #include "traces/files/file_facts.hpp"
 #include "traces/files/hdf5_attributes.hpp"
 #include "traces/files/hdf5_file.hpp"
+#include "traces/files/rehearsal.hpp"
 
 namespace cistern {
 namespace {
@@ -20,25 +21,37 @@ std::string column_name(const Hdf5Handle& group, hsize_t index, const std::strin
   throw InputError(file + ": /truth", fmt::format("column {} has no readable name, expected a short one", index));
 }
 
-TruthColumn read_column(const Hdf5Handle& group, const std::string& column, const std::string& file,
-                        std::int64_t traces) {
+/// A column whose values are still to be read.
+struct OpenColumn {
+  TruthColumn truth;
+  std::string place;
+  Hdf5Handle data;
+};
+
+OpenColumn open_column(const Hdf5Handle& group, const std::string& column, const std::string& file,
+                       std::int64_t traces) {
   const std::string place = fmt::format("{}: /truth/{}", file, column);
-  const Hdf5Handle data(H5Dopen2(group.get(), column.c_str(), H5P_DEFAULT), H5Dclose);
+  Hdf5Handle data(H5Dopen2(group.get(), column.c_str(), H5P_DEFAULT), H5Dclose);
   const Hdf5Handle type(data.is_open() ? H5Dget_type(data.get()) : H5I_INVALID_HID, H5Tclose);
   const Hdf5Handle space(data.is_open() ? H5Dget_space(data.get()) : H5I_INVALID_HID, H5Sclose);
   const H5T_class_t kind = type.is_open() ? H5Tget_class(type.get()) : H5T_NO_CLASS;
   const bool is_one_number_per_trace = (kind == H5T_FLOAT || kind == H5T_INTEGER) && space.is_open() &&
                                        H5Sget_simple_extent_ndims(space.get()) == 1 &&
                                        H5Sget_simple_extent_npoints(space.get()) == traces;
-  if (!is_one_number_per_trace)
+  if (!is_one_number_per_trace) {
     throw InputError(place, fmt::format("is not one number for each of {} traces, as expected", traces));
+  }
   const auto unit = read_text_attribute(data.get(), place, "unit");
   if (!unit) throw InputError(place, "has no attribute unit, expected a text");
-  TruthColumn truth{column, *unit, std::vector<double>(static_cast<std::size_t>(traces))};
-  if (H5Dread(data.get(), H5T_NATIVE_DOUBLE, H5S_ALL, H5S_ALL, H5P_DEFAULT, truth.values.data()) < 0) {
-    throw InputError(place, "cannot be read, expected an undamaged file");
+  return {{column, *unit, {}}, place, std::move(data)};
+}
+
+TruthColumn read_values(OpenColumn column, std::int64_t traces) {
+  column.truth.values.resize(static_cast<std::size_t>(traces));
+  if (H5Dread(column.data.get(), H5T_NATIVE_DOUBLE, H5S_ALL, H5S_ALL, H5P_DEFAULT, column.truth.values.data()) < 0) {
+    throw InputError(column.place, "cannot be read, expected an undamaged file");
   }
-  return truth;
+  return std::move(column.truth);
 }
 
 Hdf5Handle create_column(const Hdf5Handle& group, const TruthColumn& column) {
@@ -51,24 +64,37 @@ Hdf5Handle create_column(const Hdf5Handle& group, const TruthColumn& column) {
           H5Dclose};
 }
 
+struct Truth {
+  Hdf5Handle file;
+  std::int64_t traces{0};
+  std::vector<OpenColumn> columns;
+};
+
+Truth open_truth(const std::filesystem::path& path) {
+  const std::string name = path.string();
+  Truth truth{open_hdf5_file(path), 0, {}};
+  if (H5Lexists(truth.file.get(), "truth", H5P_DEFAULT) <= 0) return truth;
+  truth.traces = examine_hdf5_codes(open_hdf5_codes(truth.file, name), name).traces;
+  const Hdf5Handle group(H5Gopen2(truth.file.get(), "truth", H5P_DEFAULT), H5Gclose);
+  H5G_info_t facts{};
+  if (!group.is_open() || H5Gget_info(group.get(), &facts) < 0) {
+    throw InputError(name + ": /truth", "cannot be read, expected a group of columns");
+  }
+  for (hsize_t i = 0; i < facts.nlinks; ++i) {
+    truth.columns.push_back(open_column(group, column_name(group, i, name), name, truth.traces));
+  }
+  return truth;
+}
+
 }  // namespace
 
 std::vector<TruthColumn> read_truth(const std::filesystem::path& path) {
   require_file(path);
   if (format_of(path) != TraceFormat::Hdf5) throw InputError(path.string(), "cannot hold truth, expected an .h5 file");
-  const std::string name = path.string();
-  const Hdf5Handle file = open_hdf5_file(path);
-  if (H5Lexists(file.get(), "truth", H5P_DEFAULT) <= 0) return {};
-  const std::int64_t traces = examine_hdf5_codes(open_hdf5_codes(file, name), name).traces;
-  const Hdf5Handle group(H5Gopen2(file.get(), "truth", H5P_DEFAULT), H5Gclose);
-  H5G_info_t facts{};
-  if (!group.is_open() || H5Gget_info(group.get(), &facts) < 0) {
-    throw InputError(name + ": /truth", "cannot be read, expected a group of columns");
-  }
+  if (!comes_to_an_end([&] { (void)open_truth(path); })) refuse_damaged_hdf5(path);
+  Truth truth = open_truth(path);
   std::vector<TruthColumn> columns;
-  for (hsize_t i = 0; i < facts.nlinks; ++i) {
-    columns.push_back(read_column(group, column_name(group, i, name), name, traces));
-  }
+  for (OpenColumn& column : truth.columns) columns.push_back(read_values(std::move(column), truth.traces));
   return columns;
 }
 
