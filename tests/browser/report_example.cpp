@@ -56,6 +56,7 @@ ReportSeries falling_rate(const std::string& name, double at_one, double slope, 
     const double spread = std::exp(0.5 / std::sqrt(rate));
     series.points.push_back({level, rate, rate / spread, rate * spread});
   }
+  series.points.push_back({2.25, 0.08, 1e-7, 0.5});  // one firing: almost no lower limit
   series.points.push_back({2.5, 0, 0, 0.012});
   return series;
 }

@@ -109,6 +109,12 @@ test('a limit hangs where nothing was seen', async () => {
   assert.ok(has_at(caps, x, y_of(0.012)), 'a cap at the upper limit');
 });
 
+test('a low limit far below all values does not stretch the axis', async () => {
+  const drawing = await read_drawing(read_only, charts.rate);
+  assert.ok(drawing.texts.some((one) => one.text === '10⁻³'));
+  assert.ok(!drawing.texts.some((one) => ['10⁻⁴', '10⁻⁵', '10⁻⁶', '10⁻⁷'].includes(one.text)));
+});
+
 test('series differ without colour', async () => {
   const { page } = await open('plain');
   const drawing = await read_drawing(page, charts.efficiency);

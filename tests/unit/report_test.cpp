@@ -215,11 +215,12 @@ TEST(ReportTable, is_folded_beyond_sixty_rows) {
 
 TEST(ReportData, keeps_the_look_of_a_name_in_all_charts) {
   Report report;
-  report.blocks = {small_chart("long"), small_chart("tall"), small_chart("long")};
+  report.blocks = {small_chart("long"), small_chart("tall"), small_chart("tall"), small_chart("long")};
   const auto pictures = pictures_of(report);
   EXPECT_EQ(pictures[0]["series"][0]["look"], 0);
   EXPECT_EQ(pictures[1]["series"][0]["look"], 1);
-  EXPECT_EQ(pictures[2]["series"][0]["look"], 0);
+  EXPECT_EQ(pictures[2]["series"][0]["look"], 1);
+  EXPECT_EQ(pictures[3]["series"][0]["look"], 0);
 }
 
 TEST(ReportData, numbers_pictures_as_the_page_does) {

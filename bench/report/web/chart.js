@@ -1,9 +1,10 @@
 // One chart: lines with markers, limits, straight markers across, a legend and tooltips.
-import { axisOption, placeable } from './axis.js';
+import { axisOption, isLog, placeable } from './axis.js';
 import { band, limitBars } from './limits.js';
 import { cut, escaped, font, ink, letterWidth, look, shown } from './series.js';
 
 const manyPoints = 25;
+const decadeBelow = 10;
 const legendRow = 22;
 const legendSample = 46;
 
@@ -66,9 +67,19 @@ function legendRows(chart, width) {
   return Math.max(1, Math.ceil(widths.reduce((sum, one) => sum + one, 0) / width));
 }
 
+// What the upright axis has to span. On decades a low limit far below all values would push the curves together:
+// its bar runs off the axis instead.
+function heights(chart) {
+  const points = chart.series.flatMap((series) => series.points);
+  const values = points.flatMap((p) => [p.y, p.high]);
+  const lows = points.map((p) => p.low);
+  if (!isLog(chart.y)) return [...values, ...lows];
+  const lowest = Math.min(...values.filter((value) => placeable(chart.y, value)));
+  return [...values, ...lows.filter((low) => low >= lowest / decadeBelow)];
+}
+
 export function chartOption(chart, width, height) {
   const xs = chart.series.flatMap((series) => series.points.map((p) => p.x));
-  const ys = chart.series.flatMap((series) => series.points.flatMap((p) => [p.y, p.low, p.high]));
   const texts = new Map(chart.series.map((series) => [series.name, legendText(series, width)]));
   const hasUprights = chart.markers.some((marker) => marker.vertical);
   const series = chart.series.flatMap((one, order) => (one.draw === 'band' ? [band(one, chart)] : [lineSeries(one, order, chart), limitBars(one, chart)]));
@@ -86,7 +97,7 @@ export function chartOption(chart, width, height) {
     },
     tooltip: tooltip(chart),
     xAxis: axisOption(chart.x, xs, true, width - 110),
-    yAxis: axisOption(chart.y, ys, false, height - 60),
+    yAxis: axisOption(chart.y, heights(chart), false, height - 60),
     series: chart.markers.length > 0 ? [...series, markerLines(chart.markers)] : series,
   };
 }

@@ -76,11 +76,12 @@ function marks(trace, channel, isFirst, ns) {
 
 function windowArea(trace, isFirst, ns) {
   if (trace.window_samples === null || trace.firing_sample === null) return undefined;
-  const from = Math.max(trace.first_sample, trace.firing_sample - trace.window_samples + 1);
+  const start = trace.firing_sample - trace.window_samples + 1;
+  const from = Math.max(trace.first_sample, start);
   return {
     silent: true,
     itemStyle: { color: 'rgba(60, 66, 74, 0.10)', borderColor: soft, borderWidth: 0.6, borderType: [3, 3] },
-    label: { ...small, show: isFirst, position: 'insideTopLeft', formatter: () => 'window' },
+    label: { ...small, show: isFirst, position: 'insideTopLeft', formatter: () => (start < from ? 'window, begins earlier' : 'window') },
     data: [[{ xAxis: ns(from) }, { xAxis: ns(trace.firing_sample) }]],
   };
 }
