@@ -17,14 +17,18 @@ namespace {
 
 enum class SignalAxis { Size, Spread };
 
-double value_on(SignalAxis axis, const SignalPoint& point) { return axis == SignalAxis::Size ? point.test.size_vem : point.test.spread_ns; }
+double value_on(SignalAxis axis, const SignalPoint& point) {
+  return axis == SignalAxis::Size ? point.test.size_vem : point.test.spread_ns;
+}
 
 /// Points of one [[signal]] at one value of the other axis.
 std::vector<std::size_t> points_along(const EfficiencyRun& run, std::size_t signal, SignalAxis axis, double other) {
   std::vector<std::size_t> along;
   for (std::size_t p = 0; p < run.points().size(); ++p) {
     const SignalPoint& point = run.points()[p];
-    if (point.signal == signal && value_on(axis == SignalAxis::Size ? SignalAxis::Spread : SignalAxis::Size, point) == other) along.push_back(p);
+    if (point.signal == signal &&
+        value_on(axis == SignalAxis::Size ? SignalAxis::Spread : SignalAxis::Size, point) == other)
+      along.push_back(p);
   }
   return along;
 }
@@ -37,28 +41,34 @@ ReportPoint efficiency_point(double x, const Subject& subject, const PointRespon
   return {x, static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1)), limits.low, limits.high};
 }
 
-std::string station_name(const Subject& set) { return set.name == "candidate" ? "station with the candidate" : "station in service"; }
+std::string station_name(const Subject& set) {
+  return set.name == "candidate" ? "station with the candidate" : "station in service";
+}
 
 /// Without triggers that make up a whole station: their line would lie on its line.
 std::vector<Subject> subjects_to_draw(const StationPlan& plan) {
   auto subjects = subjects_of(plan.triggers);
   std::vector<Subject> drawn;
   for (const Subject& subject : subjects) {
-    const bool is_whole_station = !subject.is_set && std::any_of(subjects.begin(), subjects.end(), [&](const Subject& other) {
-      return other.is_set && other.members == subject.members;
-    });
+    const bool is_whole_station =
+        !subject.is_set && std::any_of(subjects.begin(), subjects.end(), [&](const Subject& other) {
+          return other.is_set && other.members == subject.members;
+        });
     if (!is_whole_station) drawn.push_back(subject);
   }
   return drawn;
 }
 
-ReportChart efficiency_chart(const EfficiencyRun& run, const StationPlan& plan, const std::vector<std::size_t>& along, SignalAxis axis) {
+ReportChart efficiency_chart(const EfficiencyRun& run, const StationPlan& plan, const std::vector<std::size_t>& along,
+                             SignalAxis axis) {
   ReportChart chart;
   chart.y = {"efficiency", AxisScale::Linear, 0, 1};
-  chart.note = "Share of the placed signals on which the subject fires. Bars are exact 95 % limits (Clopper and Pearson).";
+  chart.note =
+      "Share of the placed signals on which the subject fires. Bars are exact 95 % limits (Clopper and Pearson).";
   for (const Subject& subject : subjects_to_draw(plan)) {
     ReportSeries series{subject.is_set ? station_name(subject) : subject.name, {}};
-    for (const std::size_t p : along) series.points.push_back(efficiency_point(value_on(axis, run.points()[p]), subject, run.responses(p)));
+    for (const std::size_t p : along)
+      series.points.push_back(efficiency_point(value_on(axis, run.points()[p]), subject, run.responses(p)));
     chart.series.push_back(std::move(series));
   }
   return chart;
@@ -71,14 +81,19 @@ void add_efficiency_charts(const Scenario& scenario, const QualifyResults& resul
     const double spread = signal.spreads_ns[signal.spreads_ns.size() / 2];
     const double size = signal.sizes_vem[signal.sizes_vem.size() / 2];
     if (signal.sizes_vem.size() > 1) {
-      ReportChart chart = efficiency_chart(*results.signals, results.plan, points_along(*results.signals, s, SignalAxis::Size, spread), SignalAxis::Size);
+      ReportChart chart =
+          efficiency_chart(*results.signals, results.plan, points_along(*results.signals, s, SignalAxis::Size, spread),
+                           SignalAxis::Size);
       chart.heading = fmt::format("Efficiency for {}, against size", signal.name);
-      chart.note += spread > 0 ? fmt::format(" Arrival times spread over {} ns (10 to 90 %).", spread) : " All light at once.";
+      chart.note +=
+          spread > 0 ? fmt::format(" Arrival times spread over {} ns (10 to 90 %).", spread) : " All light at once.";
       chart.x = {"true size (VEM)", AxisScale::Logarithmic, {}, {}};
       blocks.emplace_back(std::move(chart));
     }
     if (signal.spreads_ns.size() > 1) {
-      ReportChart chart = efficiency_chart(*results.signals, results.plan, points_along(*results.signals, s, SignalAxis::Spread, size), SignalAxis::Spread);
+      ReportChart chart =
+          efficiency_chart(*results.signals, results.plan, points_along(*results.signals, s, SignalAxis::Spread, size),
+                           SignalAxis::Spread);
       chart.heading = fmt::format("Efficiency for {}, against spread", signal.name);
       chart.note += fmt::format(" True size {} VEM.", size);
       chart.x = {"spread of arrival times, 10 to 90 % (ns)", AxisScale::Linear, {}, {}};
@@ -90,13 +105,23 @@ void add_efficiency_charts(const Scenario& scenario, const QualifyResults& resul
 ReportTable paired_table(const std::vector<PairedPoint>& points) {
   ReportTable table;
   table.heading = "Candidate against in service, signal by signal";
-  table.note = "Both stations saw the same traces; a signal counts as found when a first firing falls inside the match window after its onset. The p value is that of the "
-               "exact McNemar test on the signals that only one of them found; with many rows the smallest should be judged with care.";
-  table.columns = {{"signal", "", "", false}, {"both", "", "found by both", true}, {"only in service", "", "", true}, {"only candidate", "", "", true}, {"neither", "", "", true}, {"gain", "", "efficiency of the candidate less that in service", true}, {"p value", "", "two-sided", true}};
+  table.note =
+      "Both stations saw the same traces; a signal counts as found when a first firing falls inside the match window "
+      "after its onset. The p value is that of the "
+      "exact McNemar test on the signals that only one of them found; with many rows the smallest should be judged "
+      "with care.";
+  table.columns = {
+      {"signal", "", "", false},         {"both", "", "found by both", true},
+      {"only in service", "", "", true}, {"only candidate", "", "", true},
+      {"neither", "", "", true},         {"gain", "", "efficiency of the candidate less that in service", true},
+      {"p value", "", "two-sided", true}};
   for (const PairedPoint& pair : points) {
-    const auto all = static_cast<double>(std::max<std::int64_t>(1, pair.both + pair.only_in_service + pair.only_candidate + pair.neither));
-    table.rows.push_back({pair.point->condition, std::to_string(pair.both), std::to_string(pair.only_in_service), std::to_string(pair.only_candidate), std::to_string(pair.neither),
-                          fmt::format("{:+.3f}", static_cast<double>(pair.only_candidate - pair.only_in_service) / all), p_value_text(pair.p_value)});
+    const auto all = static_cast<double>(
+        std::max<std::int64_t>(1, pair.both + pair.only_in_service + pair.only_candidate + pair.neither));
+    table.rows.push_back({pair.point->condition, std::to_string(pair.both), std::to_string(pair.only_in_service),
+                          std::to_string(pair.only_candidate), std::to_string(pair.neither),
+                          fmt::format("{:+.3f}", static_cast<double>(pair.only_candidate - pair.only_in_service) / all),
+                          p_value_text(pair.p_value)});
   }
   return table;
 }
@@ -130,7 +155,8 @@ std::size_t trigger_to_show(const EfficiencyRun& run, const Subject& subject, co
   std::size_t best = subject.members.front();
   std::int32_t best_delay = -1;
   for (const std::size_t member : subject.members) {
-    const SignalResponse& response = run.responses(example.point).responses[member][static_cast<std::size_t>(example.index)];
+    const SignalResponse& response =
+        run.responses(example.point).responses[member][static_cast<std::size_t>(example.index)];
     if (response.fired() && (best_delay < 0 || response.delay_samples < best_delay)) {
       best = member;
       best_delay = response.delay_samples;
@@ -139,7 +165,8 @@ std::size_t trigger_to_show(const EfficiencyRun& run, const Subject& subject, co
   return best;
 }
 
-ReportTrace example_trace(const QualifyResults& results, const Subject& finds, const Subject& misses, const Example& example) {
+ReportTrace example_trace(const QualifyResults& results, const Subject& finds, const Subject& misses,
+                          const Example& example) {
   constexpr std::int64_t shown_before = 60;
   constexpr std::int64_t shown_after = 260;
   const EfficiencyRun& run = *results.signals;
@@ -149,18 +176,25 @@ ReportTrace example_trace(const QualifyResults& results, const Subject& finds, c
   const std::int64_t onset = run.frame().onset;
   ReportTrace trace;
   trace.heading = fmt::format("A signal that only the {} finds", station_name(finds));
-  trace.note = fmt::format("{}, signal {}: {} fires; the {} does not.", run.points()[example.point].condition, example.index, trigger.name, station_name(misses));
+  trace.note = fmt::format("{}, signal {}: {} fires; the {} does not.", run.points()[example.point].condition,
+                           example.index, trigger.name, station_name(misses));
   trace.sample_rate_mhz = results.plan.digitizer.sample_rate_mhz;
-  trace.first_sample = std::max<std::int64_t>(0, onset - shown_before);
+  trace.firing_sample =
+      onset + run.responses(example.point).responses[t][static_cast<std::size_t>(example.index)].delay_samples;
+  // Early enough for the whole window that ends in the firing.
+  const std::int64_t window_start = *trace.firing_sample - reach_samples(trigger.condition);
+  trace.first_sample = std::max<std::int64_t>(0, std::min(onset - shown_before, window_start - shown_before / 4));
   const auto last = std::min<std::int64_t>(static_cast<std::int64_t>(codes.samples()), onset + shown_after);
   for (std::size_t c = 0; c < codes.channels(); ++c) {
     const auto all = codes.channel(c);
-    ReportTraceChannel channel{fmt::format("channel {}", c), {all.begin() + trace.first_sample, all.begin() + last}, {}};
-    if (trigger.condition.kind != TriggerKind::BoxcarSum) channel.level = trigger.condition.baseline_counts[c] + trigger.condition.level_counts[c];
+    ReportTraceChannel channel{
+        fmt::format("channel {}", c), {all.begin() + trace.first_sample, all.begin() + last}, {}, {}};
+    channel.baseline = trigger.condition.baseline_counts[c];
+    if (trigger.condition.kind != TriggerKind::BoxcarSum)
+      channel.level = trigger.condition.baseline_counts[c] + trigger.condition.level_counts[c];
     trace.channels.push_back(std::move(channel));
   }
   trace.onset_sample = onset;
-  trace.firing_sample = onset + run.responses(example.point).responses[t][static_cast<std::size_t>(example.index)].delay_samples;
   if (reach_samples(trigger.condition) > 1) trace.window_samples = reach_samples(trigger.condition);
   trace.trigger = trigger.name;
   return trace;
@@ -171,8 +205,10 @@ void add_examples(const QualifyResults& results, std::vector<ReportBlock>& block
   const auto subjects = subjects_of(results.plan.triggers);
   const Subject& in_service = subjects[0];
   const Subject& candidate = subjects[1];
-  if (const auto example = find_example(*results.signals, candidate, in_service)) blocks.emplace_back(example_trace(results, candidate, in_service, *example));
-  if (const auto example = find_example(*results.signals, in_service, candidate)) blocks.emplace_back(example_trace(results, in_service, candidate, *example));
+  if (const auto example = find_example(*results.signals, candidate, in_service))
+    blocks.emplace_back(example_trace(results, candidate, in_service, *example));
+  if (const auto example = find_example(*results.signals, in_service, candidate))
+    blocks.emplace_back(example_trace(results, in_service, candidate, *example));
 }
 
 ReportTable logic_table(const LogicCheck& logic) {
@@ -184,10 +220,17 @@ ReportTable logic_table(const LogicCheck& logic) {
     firings += agreement.firings;
     differences += agreement.differences;
   }
-  table.note = fmt::format("The smallest stimuli on either side of each boundary, without noise. On random codes around the levels the fast kernels and the specification agree: "
-                           "{} firings, {} differences.", firings, differences);
-  table.columns = {{"trigger", "", "", false}, {"stimulus", "", "", false}, {"should fire", "", "by its settings", false}, {"fired", "", "", false}};
-  for (const LogicRow& row : logic.rows) table.rows.push_back({row.trigger, row.stimulus, row.should_fire ? "yes" : "no", row.fired ? "yes" : "no"});
+  table.note = fmt::format(
+      "The smallest stimuli on either side of each boundary, without noise. On random codes around the levels the fast "
+      "kernels and the specification agree: "
+      "{} firings, {} differences.",
+      firings, differences);
+  table.columns = {{"trigger", "", "", false},
+                   {"stimulus", "", "", false},
+                   {"should fire", "", "by its settings", false},
+                   {"fired", "", "", false}};
+  for (const LogicRow& row : logic.rows)
+    table.rows.push_back({row.trigger, row.stimulus, row.should_fire ? "yes" : "no", row.fired ? "yes" : "no"});
   return table;
 }
 
@@ -196,7 +239,8 @@ ReportTable logic_table(const LogicCheck& logic) {
 Report qualify_report(const Scenario& scenario, const QualifyResults& results, const Summary& summary) {
   Report report = start_report(summary);
   auto& blocks = report.blocks;
-  if (!scenario.identity.summary.empty()) blocks.emplace_back(ReportText{"What is compared", {scenario.identity.summary}});
+  if (!scenario.identity.summary.empty())
+    blocks.emplace_back(ReportText{"What is compared", {scenario.identity.summary}});
   if (results.signals) {
     add_efficiency_charts(scenario, results, blocks);
     const auto paired = paired_points(*results.signals, results.plan);
@@ -204,19 +248,28 @@ Report qualify_report(const Scenario& scenario, const QualifyResults& results, c
     add_examples(results, blocks);
   }
   if (results.scan) {
-    for (ReportBlock& block : rate_charts(*results.scan, results.plan, results.facts)) blocks.push_back(std::move(block));
+    for (ReportBlock& block : rate_charts(*results.scan, results.plan, results.facts))
+      blocks.push_back(std::move(block));
     std::vector<Figure> own;  // the scan's points are in the chart above
-    std::copy_if(summary.figures.begin(), summary.figures.end(), std::back_inserter(own), [](const Figure& f) { return std::count(f.name.begin(), f.name.end(), '.') < 2; });
-    blocks.emplace_back(figure_table("Background", fmt::format("{:.4g} s of live time; a tag is sent for every capture.", results.background->live_time_s()), own,
-                                     {"background_rate", "tag_rate", "busy_loss", "dead_time", "rate_slope"}));
+    std::copy_if(summary.figures.begin(), summary.figures.end(), std::back_inserter(own),
+                 [](const Figure& f) { return std::count(f.name.begin(), f.name.end(), '.') < 2; });
+    blocks.emplace_back(figure_table(
+        "Background",
+        fmt::format("{:.4g} s of live time; a tag is sent for every capture.", results.background->live_time_s()), own,
+        {"background_rate", "tag_rate", "busy_loss", "dead_time", "rate_slope"}));
   }
   if (results.recorded) {
-    blocks.emplace_back(recorded_table(results.plan, results.recorded->counts, results.recorded->file.filename().string()));
-    for (ReportChart& chart : margin_charts(results.plan, results.recorded->counts)) blocks.emplace_back(std::move(chart));
+    blocks.emplace_back(
+        recorded_table(results.plan, results.recorded->counts, results.recorded->file.filename().string()));
+    for (ReportChart& chart : margin_charts(results.plan, results.recorded->counts))
+      blocks.emplace_back(std::move(chart));
   }
   if (results.signals) {
-    blocks.emplace_back(figure_table("Delay from onset to firing", "Of the signals that fired.", summary.figures, {"delay_median", "delay_p95"}));
-    blocks.emplace_back(figure_table("Margins of test signals", "Half of the traces reach at least this; at least 0 fires.", summary.figures, {"margin_median"}));
+    blocks.emplace_back(figure_table("Delay from onset to firing", "Of the signals that fired.", summary.figures,
+                                     {"delay_median", "delay_p95"}));
+    blocks.emplace_back(figure_table("Margins of test signals",
+                                     "Half of the traces reach at least this; at least 0 fires.", summary.figures,
+                                     {"margin_median"}));
   }
   blocks.emplace_back(logic_table(results.logic));
   blocks.emplace_back(trigger_table(results.plan));

@@ -19,16 +19,20 @@ VerdictState state_of(const std::string& verdict) {
 }
 
 std::size_t count_of(const Summary& summary, const std::string& verdict) {
-  return static_cast<std::size_t>(std::count_if(summary.requirements.begin(), summary.requirements.end(), [&](const auto& r) { return r.verdict == verdict; }));
+  return static_cast<std::size_t>(std::count_if(summary.requirements.begin(), summary.requirements.end(),
+                                                [&](const auto& r) { return r.verdict == verdict; }));
 }
 
 std::string verdict_sentence(const Summary& summary) {
   const std::size_t all = summary.requirements.size();
   if (all == 0) return "No requirements were stated; these are the figures.";
   if (summary.verdict == "met") return fmt::format("Met: all {} requirements hold.", all);
-  std::string text = summary.verdict == "not met" ? fmt::format("Not met: {} of {} requirements fail", count_of(summary, "not met"), all)
-                                                  : fmt::format("Undecided: {} of {} requirements need more data", count_of(summary, "undecided"), all);
-  if (summary.verdict == "not met" && count_of(summary, "undecided") > 0) text += fmt::format(", {} undecided", count_of(summary, "undecided"));
+  std::string text =
+      summary.verdict == "not met"
+          ? fmt::format("Not met: {} of {} requirements", count_of(summary, "not met"), all)
+          : fmt::format("Undecided: {} of {} requirements, for want of data", count_of(summary, "undecided"), all);
+  if (summary.verdict == "not met" && count_of(summary, "undecided") > 0)
+    text += fmt::format(", {} undecided", count_of(summary, "undecided"));
   return text + ".";
 }
 
@@ -37,10 +41,19 @@ std::string number_or_dash(const std::optional<double>& value) { return value ? 
 ReportTable requirement_table(const Summary& summary) {
   ReportTable table;
   table.heading = "Requirements";
-  table.note = "Met when the one-sided limit at the stated confidence lies within the bound, not met when the other one lies beyond it, else undecided.";
-  table.columns = {{"requirement", "", "", false}, {"bound", "", "", false}, {"value", "", "", true}, {"low", "", "one-sided limit", true}, {"high", "", "one-sided limit", true}, {"verdict", "", "", false}, {"reason", "", "", false}};
+  table.note =
+      "Met when the one-sided limit at the stated confidence lies within the bound, not met when the other one lies "
+      "beyond it, else undecided.";
+  table.columns = {{"requirement", "", "", false},
+                   {"bound", "", "", false},
+                   {"value", "", "", true},
+                   {"low", "", "one-sided limit", true},
+                   {"high", "", "one-sided limit", true},
+                   {"verdict", "", "", false},
+                   {"reason", "", "", false}};
   for (const RequirementOutcome& r : summary.requirements) {
-    table.rows.push_back({r.name, r.bound, number_or_dash(r.value), number_or_dash(r.low), number_or_dash(r.high), r.verdict, r.reason});
+    table.rows.push_back(
+        {r.name, r.bound, number_or_dash(r.value), number_or_dash(r.low), number_or_dash(r.high), r.verdict, r.reason});
   }
   return table;
 }
@@ -55,13 +68,17 @@ std::string condition_text(const ConditionSettings& c) {
   switch (c.kind) {
     case TriggerKind::Threshold: return fmt::format("level {} counts", per_channel(c.level_counts));
     case TriggerKind::TimeOverThreshold:
-      return fmt::format("level {} counts, {} of {} samples", per_channel(c.level_counts), c.min_samples_over, c.window_samples);
-    case TriggerKind::BoxcarSum: return fmt::format("sum {} counts over {} samples", per_channel(c.sum_counts), c.length_samples);
+      return fmt::format("level {} counts, {} of {} samples", per_channel(c.level_counts), c.min_samples_over,
+                         c.window_samples);
+    case TriggerKind::BoxcarSum:
+      return fmt::format("sum {} counts over {} samples", per_channel(c.sum_counts), c.length_samples);
   }
   return {};
 }
 
-std::string role_text(TriggerRole role) { return role == TriggerRole::Both ? "both" : role == TriggerRole::InService ? "in service" : "candidate"; }
+std::string role_text(TriggerRole role) {
+  return role == TriggerRole::Both ? "both" : role == TriggerRole::InService ? "in service" : "candidate";
+}
 
 /// Mean level of a variant in VEM, or its factor where there is no calibration.
 double level_x(const RateVariant& variant, const StationFacts& facts) {
@@ -70,13 +87,14 @@ double level_x(const RateVariant& variant, const StationFacts& facts) {
   const auto& calibration = is_sum ? facts.area_counts_per_vem : facts.height_counts_per_vem;
   if (!calibration) return variant.x;
   double sum = 0;
-  for (std::size_t i = 0; i < calibration->size(); ++i) sum += static_cast<double>(is_sum ? c.sum_counts[i] : c.level_counts[i]) / (*calibration)[i];
+  for (std::size_t i = 0; i < calibration->size(); ++i)
+    sum += static_cast<double>(is_sum ? c.sum_counts[i] : c.level_counts[i]) / (*calibration)[i];
   return sum / static_cast<double>(calibration->size());
 }
 
 std::string slope_text(const RateScan& scan, std::size_t trigger) {
   const auto slope = level_slope(scan, trigger);
-  return slope ? fmt::format(" (slope {:.1f} +- {:.1f})", slope->value, slope->standard_error) : "";
+  return slope ? fmt::format("slope {:.1f} ± {:.1f}", slope->value, slope->standard_error) : "";
 }
 
 ReportPoint rate_point(double x, const std::vector<std::int64_t>& counts, double block_s) {
@@ -89,11 +107,14 @@ ReportChart scan_chart(const RateScan& scan, const StationPlan& plan, const Stat
   ReportChart chart;
   chart.y = {"background rate (Hz)", AxisScale::Logarithmic, {}, {}};
   for (std::size_t t = 0; t < plan.triggers.size(); ++t) {
-    ReportSeries series{plan.triggers[t].name + (axis == ScanAxis::Level ? slope_text(scan, t) : ""), {}};
+    ReportSeries series;
+    series.name = plan.triggers[t].name;
+    if (axis == ScanAxis::Level) series.remark = slope_text(scan, t);
     for (std::size_t v = 0; v < scan.variants().size(); ++v) {
       const RateVariant& variant = scan.variants()[v];
       if (variant.trigger != t || variant.axis != axis || scan.firings_per_block(v).empty()) continue;
-      series.points.push_back(rate_point(axis == ScanAxis::Level ? level_x(variant, facts) : variant.x, scan.firings_per_block(v), scan.time().block_s()));
+      series.points.push_back(rate_point(axis == ScanAxis::Level ? level_x(variant, facts) : variant.x,
+                                         scan.firings_per_block(v), scan.time().block_s()));
     }
     if (!series.points.empty()) chart.series.push_back(std::move(series));
   }
@@ -101,7 +122,8 @@ ReportChart scan_chart(const RateScan& scan, const StationPlan& plan, const Stat
 }
 
 bool starts_with_any(const std::string& name, const std::vector<std::string>& quantities) {
-  return std::any_of(quantities.begin(), quantities.end(), [&](const std::string& quantity) { return name.rfind(quantity + ".", 0) == 0; });
+  return std::any_of(quantities.begin(), quantities.end(),
+                     [&](const std::string& quantity) { return name.rfind(quantity + ".", 0) == 0; });
 }
 
 }  // namespace
@@ -109,10 +131,13 @@ bool starts_with_any(const std::string& name, const std::vector<std::string>& qu
 Report start_report(const Summary& summary) {
   Report report;
   report.title = summary.title;
-  report.subtitle = fmt::format("cistern {} {} - scenario {} (digest {}), seed {}", summary.version, summary.command, summary.scenario, summary.scenario_digest, summary.seed);
+  report.subtitle = fmt::format("cistern {} {} - scenario {} (digest {}), seed {}", summary.version, summary.command,
+                                summary.scenario, summary.scenario_digest, summary.seed);
   report.verdict = {state_of(summary.verdict), verdict_sentence(summary), {}};
   for (const RequirementOutcome& r : summary.requirements) {
-    if (r.verdict != "met") report.verdict.points.push_back(fmt::format("{} {}: {}, measured {}{}", r.name, r.verdict, r.bound, number_or_dash(r.value), r.reason.empty() ? "" : "; " + r.reason));
+    if (r.verdict != "met")
+      report.verdict.points.push_back(fmt::format("{} {}: {}, measured {}{}", r.name, r.verdict, r.bound,
+                                                  number_or_dash(r.value), r.reason.empty() ? "" : "; " + r.reason));
   }
   if (!summary.requirements.empty()) report.blocks.emplace_back(requirement_table(summary));
   return report;
@@ -122,22 +147,37 @@ ReportTable trigger_table(const StationPlan& plan) {
   ReportTable table;
   table.heading = "Triggers as they ran";
   table.note = "In counts and samples; levels and sums are above baseline, and equal is enough.";
-  table.columns = {{"trigger", "", "", false}, {"role", "", "", false}, {"kind", "", "", false}, {"condition", "", "", false}, {"majority", "channels", "", true}, {"hold-off", "samples", "", true}, {"prescale", "", "", true}};
+  table.columns = {{"trigger", "", "", false},
+                   {"role", "", "", false},
+                   {"kind", "", "", false},
+                   {"condition", "", "", false},
+                   {"majority", "channels", "", true},
+                   {"hold-off", "samples", "", true},
+                   {"prescale", "", "", true}};
   for (const TriggerSettings& t : plan.triggers) {
     const auto enabled = std::count(t.condition.channel_enabled.begin(), t.condition.channel_enabled.end(), true);
-    table.rows.push_back({t.name, role_text(t.role), name_of(t.condition.kind), condition_text(t.condition), fmt::format("{} of {}", t.condition.majority, enabled),
+    table.rows.push_back({t.name, role_text(t.role), name_of(t.condition.kind), condition_text(t.condition),
+                          fmt::format("{} of {}", t.condition.majority, enabled),
                           std::to_string(t.firing.hold_off_samples), std::to_string(t.firing.prescale)});
   }
   return table;
 }
 
-ReportTable figure_table(const std::string& heading, const std::string& note, const std::vector<Figure>& figures, const std::vector<std::string>& quantities) {
+ReportTable figure_table(const std::string& heading, const std::string& note, const std::vector<Figure>& figures,
+                         const std::vector<std::string>& quantities) {
   ReportTable table;
   table.heading = heading;
   table.note = note;
-  table.columns = {{"figure", "", "", false}, {"value", "", "", true}, {"low", "", "two-sided 95 % limit", true}, {"high", "", "two-sided 95 % limit", true}, {"unit", "", "", false}, {"note", "", "", false}};
+  table.columns = {{"figure", "", "", false},
+                   {"value", "", "", true},
+                   {"low", "", "two-sided 95 % limit", true},
+                   {"high", "", "two-sided 95 % limit", true},
+                   {"unit", "", "", false},
+                   {"note", "", "", false}};
   for (const Figure& f : figures) {
-    if (starts_with_any(f.name, quantities)) table.rows.push_back({f.name, number_or_dash(f.value), number_or_dash(f.low), number_or_dash(f.high), f.unit, f.note});
+    if (starts_with_any(f.name, quantities))
+      table.rows.push_back(
+          {f.name, number_or_dash(f.value), number_or_dash(f.low), number_or_dash(f.high), f.unit, f.note});
   }
   return table;
 }
@@ -146,9 +186,12 @@ std::vector<ReportBlock> rate_charts(const RateScan& scan, const StationPlan& pl
   std::vector<ReportBlock> blocks;
   ReportChart levels = scan_chart(scan, plan, facts, ScanAxis::Level);
   levels.heading = "Background rate against level";
-  levels.note = "Bars are 95 % limits. All points of a trigger share their live time, so they move together. The slope is d ln(rate) / d ln(level) at the level in use.";
+  levels.note =
+      "Bars are 95 % limits. All points of a trigger share their live time, so they move together. The slope is d "
+      "ln(rate) / d ln(level) at the level in use.";
   const bool calibrated = facts.height_counts_per_vem && facts.area_counts_per_vem;
-  levels.x = {calibrated ? "level, or sum, per channel (VEM)" : "factor on the level or sum", AxisScale::Linear, {}, {}};
+  levels.x = {
+      calibrated ? "level, or sum, per channel (VEM)" : "factor on the level or sum", AxisScale::Linear, {}, {}};
   if (!levels.series.empty()) blocks.emplace_back(std::move(levels));
   ReportChart samples = scan_chart(scan, plan, facts, ScanAxis::SamplesOver);
   samples.heading = "Background rate against samples over";
@@ -161,7 +204,8 @@ std::vector<ReportBlock> rate_charts(const RateScan& scan, const StationPlan& pl
 ReportText notes_block(const Summary& summary) { return {"Notes and limits of validity", summary.notes}; }
 
 std::string synthetic_background_limits() {
-  return "The synthetic background of this version holds atmospheric muons and electronic noise; electrons, photons, decay electrons and small showers "
+  return "The synthetic background of this version holds atmospheric muons and electronic noise; electrons, photons, "
+         "decay electrons and small showers "
          "are left out, so measured rates at low levels lie above these (docs/physics.md).";
 }
 
@@ -169,13 +213,17 @@ std::string value_with_limits(const Figure& figure) {
   if (!figure.value) return "not measured";
   const std::string unit = figure.unit.empty() ? "" : " " + figure.unit;
   if (!figure.low || !figure.high) return number_text(*figure.value) + unit;
-  return fmt::format("{} ({} to {}){}", number_text(*figure.value), number_text(*figure.low), number_text(*figure.high), unit);
+  return fmt::format("{} ({} to {}){}", number_text(*figure.value), number_text(*figure.low), number_text(*figure.high),
+                     unit);
 }
 
 std::vector<std::string> verdict_lines(const Summary& summary) {
   std::vector<std::string> lines{verdict_sentence(summary)};
   for (const RequirementOutcome& r : summary.requirements) {
-    lines.push_back(fmt::format("  {:<10} {:<24} {}: {}", r.verdict, r.name, r.bound, r.value ? fmt::format("{} ({} to {})", number_text(*r.value), number_or_dash(r.low), number_or_dash(r.high)) : "not measured"));
+    lines.push_back(fmt::format(
+        "  {:<10} {:<24} {}: {}", r.verdict, r.name, r.bound,
+        r.value ? fmt::format("{} ({} to {})", number_text(*r.value), number_or_dash(r.low), number_or_dash(r.high))
+                : "not measured"));
     if (!r.reason.empty()) lines.push_back("             " + r.reason);
   }
   return lines;
