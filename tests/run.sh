@@ -58,7 +58,7 @@ case $mode in
     ;;
   asan)
     configure build/asan -DCMAKE_BUILD_TYPE=Release -DCISTERN_SANITIZE=ON
-    # Not all unit tests: those of memory use and of whole experiments are not made for sanitizers' overhead.
+    # Logic and parsers; tests of memory use and of whole experiments are left out.
     programs=(statistics_test unit_digitizer_test unit_station_test unit_messages_test unit_trigger_test
               unit_scenario_test fuzz_scenario_test)
     cmake --build build/asan --target "${programs[@]}"
