@@ -144,6 +144,16 @@ TEST(TraceSurvey, segments_are_1024_samples_or_the_power_of_two_in_a_shorter_tra
   }
 }
 
+TEST(TraceSurvey, no_segment_goes_across_the_end_of_a_trace) {
+  RandomStream stream(seed, Purpose::PropertyTest, 2);
+  const WholeFile file = random_file(2, 1, 1'500, 12, stream);
+  std::vector<Codes> heads;
+  for (const Codes& trace : file.traces) {
+    std::copy_n(trace.channel(0).begin(), 1'024, heads.emplace_back(1, 1'024).channel(0).begin());
+  }
+  EXPECT_EQ(describe(file.traces, 12).channels[0].spectrum, describe(heads, 12).channels[0].spectrum);
+}
+
 TEST(TraceSurvey, power_adds_up_to_the_mean_square_of_noise) {
   for (const std::size_t samples : {512U, 4'096U}) {
     std::vector<Codes> traces;
