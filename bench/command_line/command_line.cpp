@@ -107,6 +107,7 @@ ExitStatus parse_and_run(const std::vector<std::string>& arguments) {
 
 ExitStatus run_command_line(const std::vector<std::string>& arguments) {
   std::signal(SIGPIPE, SIG_IGN);
+  std::signal(SIGXFSZ, SIG_IGN);  // a file size limit is then a full disk: a fault with its message
   try {
     return parse_and_run(arguments);
   } catch (const InputError& error) {

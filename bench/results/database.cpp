@@ -42,13 +42,16 @@ void bind(sqlite3* handle, sqlite3_stmt* statement, std::initializer_list<Cell> 
 Cell cell_of(const std::optional<double>& value) { return value ? Cell{*value} : Cell{}; }
 Cell cell_of(const std::optional<long long>& value) { return value ? Cell{static_cast<std::int64_t>(*value)} : Cell{}; }
 
-Database::Database(const std::filesystem::path& path) {
-  if (sqlite3_open(path.c_str(), &handle_) != SQLITE_OK) {
+Database::Database(const std::filesystem::path& path, DatabaseUse use) {
+  // Also for reading: what a killed run left in the write-ahead file must be taken in first.
+  const int flags = SQLITE_OPEN_READWRITE | (use == DatabaseUse::Write ? SQLITE_OPEN_CREATE : 0);
+  if (sqlite3_open_v2(path.c_str(), &handle_, flags, nullptr) != SQLITE_OK) {
     const std::string reason = sqlite3_errmsg(handle_);
     sqlite3_close(handle_);
     throw SystemFault(fmt::format("{}: {}", path.string(), reason));
   }
   sqlite3_busy_timeout(handle_, 5000);
+  if (use == DatabaseUse::Read) return;
   execute("PRAGMA journal_mode=WAL");
   execute("PRAGMA synchronous=NORMAL");
 }

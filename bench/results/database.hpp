@@ -24,12 +24,15 @@ using Cell = std::variant<std::monostate, std::int64_t, double, std::string_view
 [[nodiscard]] Cell cell_of(const std::optional<double>& value);
 [[nodiscard]] Cell cell_of(const std::optional<long long>& value);
 
+/// Write: opens or creates, in write-ahead mode so that others can read while it is written.
+/// Read: leaves a file as it is found.
+enum class DatabaseUse { Write, Read };
+
 class Statement;
 
 class Database {
  public:
-  /// Opens or creates, in write-ahead mode so that others can read while it is written.
-  explicit Database(const std::filesystem::path& path);
+  explicit Database(const std::filesystem::path& path, DatabaseUse use = DatabaseUse::Write);
   ~Database();
   Database(const Database&) = delete;
   Database& operator=(const Database&) = delete;

@@ -6,6 +6,8 @@
 
 #include "bench/results/csv_file.hpp"
 #include "bench/results/database.hpp"
+#include "bench/results/directory_lock.hpp"
+#include "bench/results/occupant.hpp"
 #include "bench/results/summary_text.hpp"
 #include "traces/base/errors.hpp"
 
@@ -16,36 +18,6 @@ namespace {
 constexpr const char* replaced_name = ".replaced";
 
 bool is_complete(const fs::path& directory) { return fs::exists(directory / "summary.json"); }
-
-bool holds_something(const fs::path& directory) {
-  return fs::exists(directory) && fs::directory_iterator(directory) != fs::directory_iterator{};
-}
-
-/// Whose run is in `directory`; nothing when there is none that can be read.
-std::optional<RunIdentity> identity_in(const fs::path& directory) {
-  if (!fs::exists(directory / "run.sqlite")) return {};
-  try {
-    Database database(directory / "run.sqlite");
-    const auto text = [&](const char* key) {
-      return database.first_text("SELECT value FROM run WHERE key = ?", {Cell{std::string_view{key}}}).value_or("");
-    };
-    return RunIdentity{text("command"), text("scenario"), std::stoull("0" + text("seed")), text("version"),
-                       text("options")};
-  } catch (const std::exception&) {
-    return {};
-  }
-}
-
-std::string difference(const RunIdentity& found, const RunIdentity& wanted) {
-  const auto differ = [](const char* what, const std::string& was, const std::string& is) {
-    return fmt::format("holds a run with {} \"{}\", this one has \"{}\"", what, was, is);
-  };
-  if (found.command != wanted.command) return differ("command", found.command, wanted.command);
-  if (found.scenario != wanted.scenario) return differ("scenario digest", found.scenario, wanted.scenario);
-  if (found.seed != wanted.seed) return differ("seed", std::to_string(found.seed), std::to_string(wanted.seed));
-  if (found.version != wanted.version) return differ("version", found.version, wanted.version);
-  return differ("options", found.options, wanted.options);
-}
 
 void move_entries(const fs::path& from, const fs::path& to) {
   std::vector<fs::path> entries;
@@ -63,6 +35,7 @@ struct RunDirectory::State {
   bool made_directory{false};
   bool resumed{false};
   bool settled{false};
+  std::optional<DirectoryLock> lock;
   std::unique_ptr<Database> database;
   std::unique_ptr<Statement> add_firing;
   std::unique_ptr<Statement> add_margin;
@@ -74,6 +47,7 @@ struct RunDirectory::State {
 
   void prepare_directory(const std::optional<fs::path>& chosen, const RunIdentity& identity);
   void open_database(const RunIdentity& identity);
+  void open_or_undo(const RunIdentity& identity);
   void commit() {
     database->execute("COMMIT; BEGIN");
     rows_pending = 0;
@@ -87,25 +61,14 @@ struct RunDirectory::State {
 
 void RunDirectory::State::prepare_directory(const std::optional<fs::path>& chosen, const RunIdentity& identity) {
   path = chosen ? *chosen : fs::path("cistern-run") / identity.command;
-  if (fs::exists(path) && !fs::is_directory(path)) {
-    throw InputError("--out " + path.string(),
-                     "is a file; expected a directory that is absent, empty or holds the same run");
-  }
-  if (chosen && holds_something(path)) {
-    const auto found = identity_in(path);
-    if (!found) {
-      throw InputError(
-          "--out " + path.string(),
-          "holds files that are no run of cistern; expected a directory that is absent, empty or holds the same run");
-    }
-    if (!(*found == identity)) {
-      throw InputError("--out " + path.string(),
-                       difference(*found, identity) + "; choose another directory or remove it");
-    }
-    resumed = !is_complete(path);
-  }
+  refuse_file(path);
   made_directory = !fs::exists(path);
   fs::create_directories(path);
+  lock.emplace(path);
+  if (chosen && holds_something(path)) {
+    refuse_strangers(path, identity);
+    resumed = !is_complete(path);
+  }
   fs::remove_all(replaced());
   if (!resumed && holds_something(path)) move_entries(path, replaced());
 }
@@ -125,6 +88,15 @@ void RunDirectory::State::open_database(const RunIdentity& identity) {
                                                                 {"options", identity.options}};
   for (const auto& [key, value] : rows) put.run({Cell{key}, Cell{value}});
   database->execute("BEGIN");
+}
+
+void RunDirectory::State::open_or_undo(const RunIdentity& identity) {
+  try {
+    open_database(identity);
+  } catch (...) {
+    undo();
+    throw;
+  }
 }
 
 void RunDirectory::State::close_files() {
@@ -161,7 +133,7 @@ RunDirectory::RunDirectory(const std::optional<fs::path>& chosen, const RunIdent
     : state_(std::make_unique<State>()) {
   try {
     state_->prepare_directory(chosen, identity);
-    state_->open_database(identity);
+    state_->open_or_undo(identity);
   } catch (const fs::filesystem_error& error) {
     throw SystemFault(fmt::format("{}: {}", state_->path.string(), error.code().message()));
   }
