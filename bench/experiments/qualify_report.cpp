@@ -8,6 +8,7 @@
 #include "bench/experiments/replay_report.hpp"
 #include "bench/experiments/report_parts.hpp"
 #include "bench/experiments/signal_figures.hpp"
+#include "bench/experiments/signal_tables.hpp"
 #include "bench/experiments/subjects.hpp"
 #include "bench/statistics/intervals.hpp"
 #include "bench/statistics/quantiles.hpp"
@@ -41,32 +42,14 @@ ReportPoint efficiency_point(double x, const Subject& subject, const PointRespon
   return {x, static_cast<double>(fired) / static_cast<double>(std::max<std::int64_t>(all, 1)), limits.low, limits.high};
 }
 
-std::string station_name(const Subject& set) {
-  return set.name == "candidate" ? "station with the candidate" : "station in service";
-}
-
-/// Without triggers that make up a whole station: their line would lie on its line.
-std::vector<Subject> subjects_to_draw(const StationPlan& plan) {
-  auto subjects = subjects_of(plan.triggers);
-  std::vector<Subject> drawn;
-  for (const Subject& subject : subjects) {
-    const bool is_whole_station =
-        !subject.is_set && std::any_of(subjects.begin(), subjects.end(), [&](const Subject& other) {
-          return other.is_set && other.members == subject.members;
-        });
-    if (!is_whole_station) drawn.push_back(subject);
-  }
-  return drawn;
-}
-
 ReportChart efficiency_chart(const EfficiencyRun& run, const StationPlan& plan, const std::vector<std::size_t>& along,
                              SignalAxis axis) {
   ReportChart chart;
   chart.y = {"efficiency", AxisScale::Linear, 0, 1};
   chart.note =
       "Share of the placed signals on which the subject fires. Bars are exact 95 % limits (Clopper and Pearson).";
-  for (const Subject& subject : subjects_to_draw(plan)) {
-    ReportSeries series{subject.is_set ? station_name(subject) : subject.name, {}};
+  for (const Subject& subject : distinct_subjects(plan.triggers)) {
+    ReportSeries series{title_of(subject), {}};
     for (const std::size_t p : along)
       series.points.push_back(efficiency_point(value_on(axis, run.points()[p]), subject, run.responses(p)));
     chart.series.push_back(std::move(series));
@@ -175,9 +158,9 @@ ReportTrace example_trace(const QualifyResults& results, const Subject& finds, c
   const Codes codes = run.codes_of(example.point, example.index);
   const std::int64_t onset = run.frame().onset;
   ReportTrace trace;
-  trace.heading = fmt::format("A signal that only the {} finds", station_name(finds));
+  trace.heading = fmt::format("A signal that only the {} finds", title_of(finds));
   trace.note = fmt::format("{}, signal {}: {} fires; the {} does not.", run.points()[example.point].condition,
-                           example.index, trigger.name, station_name(misses));
+                           example.index, trigger.name, title_of(misses));
   trace.sample_rate_mhz = results.plan.digitizer.sample_rate_mhz;
   trace.firing_sample =
       onset + run.responses(example.point).responses[t][static_cast<std::size_t>(example.index)].delay_samples;
@@ -265,11 +248,12 @@ Report qualify_report(const Scenario& scenario, const QualifyResults& results, c
       blocks.emplace_back(std::move(chart));
   }
   if (results.signals) {
-    blocks.emplace_back(figure_table("Delay from onset to firing", "Of the signals that fired.", summary.figures,
-                                     {"delay_median", "delay_p95"}));
-    blocks.emplace_back(figure_table("Margins of test signals",
-                                     "Half of the traces reach at least this; at least 0 fires.", summary.figures,
-                                     {"margin_median"}));
+    const auto& points = results.signals->points();
+    blocks.emplace_back(
+        delay_table("Delay from onset to firing, median", "delay_median", results.plan, points, summary.figures));
+    blocks.emplace_back(delay_table("Delay from onset to firing, 95 % of the signals", "delay_p95", results.plan,
+                                    points, summary.figures));
+    blocks.emplace_back(margin_table(results.plan, points, summary.figures));
   }
   blocks.emplace_back(logic_table(results.logic));
   blocks.emplace_back(trigger_table(results.plan));

@@ -4,6 +4,7 @@
 
 #include <cmath>
 #include <memory>
+#include <numeric>
 
 #include "bench/experiments/live_figures.hpp"
 #include "bench/experiments/report_parts.hpp"
@@ -45,6 +46,30 @@ std::vector<std::string> rate_lines(const RateScan& scan, const StationPlan& pla
   return lines;
 }
 
+/// A row per point of the scan; `figures` start with the points in the order of the variants.
+ReportTable rate_table(const RateScan& scan, const std::vector<Figure>& figures) {
+  ReportTable table;
+  table.heading = "Rates";
+  table.note =
+      "Background firings per second of live time, before any prescale. Limits are two-sided, 95 %, and allow for "
+      "the variance over mean of the counts in blocks; summary.json has it for each.";
+  table.columns = {{"figure", "", "the name by which a requirement may ask for it", false},
+                   {"setting", "", "of the first channel", false},
+                   {"firings", "", "", true},
+                   {"rate", "Hz", "", true},
+                   {"low", "Hz", "", true},
+                   {"high", "Hz", "", true}};
+  const auto text = [](const std::optional<double>& value) { return value ? number_text(*value) : "-"; };
+  for (std::size_t v = 0; v < scan.variants().size(); ++v) {
+    const auto& counts = scan.firings_per_block(v);
+    const Figure& rate = figures[v];
+    table.rows.push_back({rate.name, level_text(scan.variants()[v]),
+                          std::to_string(std::accumulate(counts.begin(), counts.end(), std::int64_t{0})),
+                          text(rate.value), text(rate.low), text(rate.high)});
+  }
+  return table;
+}
+
 }  // namespace
 
 RunOutcome run_rate(const Scenario& scenario, const RunOptions& options) {
@@ -83,8 +108,10 @@ RunOutcome run_rate(const Scenario& scenario, const RunOptions& options) {
   Report report = start_report(outcome.summary);
   for (ReportBlock& block : rate_charts(scan, plan, facts)) report.blocks.push_back(std::move(block));
   report.blocks.emplace_back(trigger_table(plan));
-  report.blocks.emplace_back(figure_table("Rates", "Background firings per second of live time, before any prescale.",
-                                          outcome.summary.figures, {"background_rate", "rate_slope"}));
+  report.blocks.emplace_back(rate_table(scan, outcome.summary.figures));
+  report.blocks.emplace_back(
+      figure_table("Slopes", "What a drift of gain does: at -10, one per cent of gain is ten per cent of rate.",
+                   outcome.summary.figures, {"rate_slope"}));
   report.blocks.emplace_back(notes_block(outcome.summary));
   directory.write_file("report.html", render_report(report));
   directory.finish(outcome.summary);

@@ -121,6 +121,15 @@ ReportChart scan_chart(const RateScan& scan, const StationPlan& plan, const Stat
   return chart;
 }
 
+/// Decades on both axes make a power law straight; levels at or below the baseline have no place on them.
+AxisScale level_scale(const ReportChart& chart) {
+  const auto is_positive = [](const ReportPoint& point) { return point.x > 0; };
+  const bool all_positive = std::all_of(chart.series.begin(), chart.series.end(), [&](const ReportSeries& series) {
+    return std::all_of(series.points.begin(), series.points.end(), is_positive);
+  });
+  return all_positive ? AxisScale::Logarithmic : AxisScale::Linear;
+}
+
 bool starts_with_any(const std::string& name, const std::vector<std::string>& quantities) {
   return std::any_of(quantities.begin(), quantities.end(),
                      [&](const std::string& quantity) { return name.rfind(quantity + ".", 0) == 0; });
@@ -190,8 +199,8 @@ std::vector<ReportBlock> rate_charts(const RateScan& scan, const StationPlan& pl
       "Bars are 95 % limits. All points of a trigger share their live time, so they move together. The slope is d "
       "ln(rate) / d ln(level) at the level in use.";
   const bool calibrated = facts.height_counts_per_vem && facts.area_counts_per_vem;
-  levels.x = {
-      calibrated ? "level, or sum, per channel (VEM)" : "factor on the level or sum", AxisScale::Linear, {}, {}};
+  const char* label = calibrated ? "level, or sum, per channel (VEM)" : "factor on the level or sum";
+  levels.x = {label, level_scale(levels), {}, {}};
   if (!levels.series.empty()) blocks.emplace_back(std::move(levels));
   ReportChart samples = scan_chart(scan, plan, facts, ScanAxis::SamplesOver);
   samples.heading = "Background rate against samples over";

@@ -13,6 +13,24 @@ std::vector<Subject> subjects_of(const std::vector<TriggerSettings>& triggers) {
   return subjects;
 }
 
+std::vector<Subject> distinct_subjects(const std::vector<TriggerSettings>& triggers) {
+  const auto subjects = subjects_of(triggers);
+  std::vector<Subject> distinct;
+  for (const Subject& subject : subjects) {
+    const bool is_whole_station =
+        !subject.is_set && std::any_of(subjects.begin(), subjects.end(), [&](const Subject& other) {
+          return other.is_set && other.members == subject.members;
+        });
+    if (!is_whole_station) distinct.push_back(subject);
+  }
+  return distinct;
+}
+
+std::string title_of(const Subject& subject) {
+  if (!subject.is_set) return subject.name;
+  return subject.name == "candidate" ? "station with the candidate" : "station in service";
+}
+
 std::vector<std::int32_t> delays_of(const Subject& subject, const PointResponses& point) {
   std::vector<std::int32_t> delays(point.responses.empty() ? 0 : point.responses.front().size(), -1);
   for (const std::size_t member : subject.members) {
