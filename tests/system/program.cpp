@@ -33,15 +33,24 @@ std::string ScratchDirectory::read(const std::string& name) const {
   return text.str();
 }
 
-ProgramRun run_cistern(const ScratchDirectory& directory, const std::string& arguments) {
-  const std::string command =
-      "cd '" + directory.path().string() + "' && '" CISTERN_PROGRAM "' " + arguments + " >.out 2>.err";
-  const int status = std::system(command.c_str());
+ProgramRun run_shell(const ScratchDirectory& directory, const std::string& command) {
+  const std::string in_directory = "cd '" + directory.path().string() +
+                                   "' && PATH='" CISTERN_FOLDER "':\"$PATH\" && ( " + command +
+                                   " ) >.out 2>.err </dev/null";
+  const int status = std::system(in_directory.c_str());
   ProgramRun run;
   run.status = WIFEXITED(status) ? WEXITSTATUS(status) : 128 + WTERMSIG(status);
   run.output = directory.read(".out");
   run.errors = directory.read(".err");
   return run;
+}
+
+ProgramRun run_cistern(const ScratchDirectory& directory, const std::string& arguments) {
+  return run_shell(directory, "cistern " + arguments);
+}
+
+std::string requirement(const std::string& figure, const std::string& bound) {
+  return "\n[requirements.r]\nfigure = \"" + figure + "\"\n" + bound + "\n";
 }
 
 std::string small_scenario() {

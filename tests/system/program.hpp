@@ -30,6 +30,12 @@ class ScratchDirectory {
 /// \param arguments  a shell's words after `cistern`; run inside `directory`
 [[nodiscard]] ProgramRun run_cistern(const ScratchDirectory& directory, const std::string& arguments);
 
+/// \param command  for the shell, which finds `cistern`; run inside `directory`
+[[nodiscard]] ProgramRun run_shell(const ScratchDirectory& directory, const std::string& command);
+
+/// [requirements.r]: one bound on one figure, to append to a scenario.
+[[nodiscard]] std::string requirement(const std::string& figure, const std::string& bound);
+
 /// [digitizer] and one trigger of each kind: enough for `replay` and the logic part of `qualify`.
 [[nodiscard]] std::string small_scenario();
 

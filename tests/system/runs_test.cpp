@@ -11,35 +11,11 @@
 #include <string>
 #include <vector>
 
-#include "tests/system/program.hpp"
+#include "tests/system/run_files.hpp"
 
 namespace cistern {
 namespace {
 namespace fs = std::filesystem;
-
-constexpr const char* kept_files[] = {"summary.json", "report.html", "firings.csv", "junit.xml"};
-
-std::string requirement(const std::string& figure, const std::string& bound) {
-  return "\n[requirements.r]\nfigure = \"" + figure + "\"\n" + bound + "\n";
-}
-
-/// All tables but the order of rows, as the SQLite command-line client prints them.
-std::string tables_of(const ScratchDirectory& directory, const std::string& run) {
-  const std::string file = (directory.path() / run / "run.sqlite").string();
-  const std::string command = "sqlite3 '" + file + "' .dump | sort > '" + (directory.path() / "dump").string() + "'";
-  EXPECT_EQ(std::system(command.c_str()), 0);
-  return directory.read("dump");
-}
-
-void expect_same_run(const ScratchDirectory& directory, const std::string& a, const std::string& b) {
-  for (const char* name : kept_files) {
-    EXPECT_EQ(fs::exists(directory.path() / a / name), fs::exists(directory.path() / b / name)) << name;
-    EXPECT_EQ(directory.read(a + "/" + name), directory.read(b + "/" + name)) << name;
-  }
-  const std::string tables = tables_of(directory, a);
-  EXPECT_FALSE(tables.empty());
-  EXPECT_EQ(tables, tables_of(directory, b));
-}
 
 class Runs : public ::testing::Test {
  protected:
@@ -49,24 +25,6 @@ class Runs : public ::testing::Test {
   ProgramRun run(const std::string& arguments) { return run_cistern(directory_, arguments); }
   ScratchDirectory directory_;
 };
-
-TEST_F(Runs, of_qualify_give_the_same_bytes_with_one_job_and_with_two) {
-  EXPECT_EQ(run("qualify s.toml --out one --jobs 1").status, 0);
-  EXPECT_EQ(run("qualify s.toml --out two --jobs 2").status, 0);
-  expect_same_run(directory_, "one", "two");
-}
-
-TEST_F(Runs, of_rate_give_the_same_bytes_with_one_job_and_with_two) {
-  EXPECT_EQ(run("rate s.toml --out one --jobs 1").status, 0);
-  EXPECT_EQ(run("rate s.toml --out two --jobs 2").status, 0);
-  expect_same_run(directory_, "one", "two");
-}
-
-TEST_F(Runs, with_another_seed_give_other_figures) {
-  EXPECT_EQ(run("qualify s.toml --out one").status, 0);
-  EXPECT_EQ(run("qualify s.toml --out two --seed 99").status, 0);
-  EXPECT_NE(directory_.read("one/firings.csv"), directory_.read("two/firings.csv"));
-}
 
 TEST_F(Runs, stopped_by_ctrl_c_exit_130_and_go_on_to_the_same_bytes) {
   const std::string slow = "qualify s.toml --jobs 1 --set qualify.live_time_s=6 --set qualify.signals_per_point=600";
